@@ -1,0 +1,3 @@
+module fewbits
+
+go 1.26
