@@ -37,12 +37,42 @@ type Tally struct {
 	FramesIn     int64 // frames in range with signal
 	FramesOut    int64 // frames with signal, out of range (or range undefined)
 	FramesSilent int64 // frames whose signal is exactly zero
-	// SignalOut and ErrorOut are the energies over the frames out of range
-	// (the quiet ones).
+	// SignalOut and ErrorOut are the energies over the frames with signal out
+	// of range (the quiet ones).
 	SignalOut, ErrorOut float64
 	// SignalIn, CrossIn: sum x^2 and sum x y over the in-range frames (for
 	// level matching: b = CrossIn/SignalIn).
 	SignalIn, CrossIn float64
+	// SamplesOut counts the samples of whole frames that are not in range, the
+	// silent ones included; OutputOut is sum y^2 over them (idle level).
+	SamplesOut int64
+	OutputOut  float64
+}
+
+// Merge adds what o summed after t: figures of t are then pooled over both.
+func (t *Tally) Merge(o *Tally) {
+	t.Samples += o.Samples
+	t.Signal += o.Signal
+	t.Error += o.Error
+	t.GranularErr += o.GranularErr
+	t.OverloadErr += o.OverloadErr
+	t.Overloaded += o.Overloaded
+	t.grow(len(o.Indices))
+	for k, n := range o.Indices {
+		t.Indices[k] += n
+	}
+	for i := range t.Segmental {
+		t.Segmental[i].merge(&o.Segmental[i])
+	}
+	t.FramesIn += o.FramesIn
+	t.FramesOut += o.FramesOut
+	t.FramesSilent += o.FramesSilent
+	t.SignalOut += o.SignalOut
+	t.ErrorOut += o.ErrorOut
+	t.SignalIn += o.SignalIn
+	t.CrossIn += o.CrossIn
+	t.SamplesOut += o.SamplesOut
+	t.OutputOut += o.OutputOut
 }
 
 // Segments sums one segmental measure over frames.
