@@ -47,13 +47,16 @@ type Results struct {
 	Definitions []Definition `json:"definitions"` // one per figure, in table order
 	Leading     string       `json:"leading"`     // the figure that decides: segsnr_db or segsnr_open_db
 	LeadingWhy  string       `json:"leading_why"` // one sentence
-	Clips       []Clip       `json:"clips"`       // by path
-	Designs     []Design     `json:"designs"`     // in order asked
-	Results     []Result     `json:"results"`     // clips x designs
-	Pooled      []Pooled     `json:"pooled"`      // one per design
-	Verdicts    []Verdict    `json:"verdicts"`    // one per bit rate
-	Refused     []Refusal    `json:"refused"`
-	Warnings    []string     `json:"warnings"` // about the run as a whole
+	// IntervalsBy says in a few words how the 95 % intervals were made, for
+	// example "paired t on 5 clips" or "blocks, these recordings only".
+	IntervalsBy string    `json:"intervals_by"`
+	Clips       []Clip    `json:"clips"`    // by path
+	Designs     []Design  `json:"designs"`  // in order asked
+	Results     []Result  `json:"results"`  // clips x designs
+	Pooled      []Pooled  `json:"pooled"`   // one per design
+	Verdicts    []Verdict `json:"verdicts"` // one per bit rate
+	Refused     []Refusal `json:"refused"`
+	Warnings    []string  `json:"warnings"` // about the run as a whole
 }
 
 // Settings are the parameters that the figures depend on.

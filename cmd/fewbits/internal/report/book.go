@@ -1,0 +1,198 @@
+package report
+
+import (
+	"cmp"
+	"math"
+	"slices"
+	"strconv"
+	"strings"
+	"unicode"
+
+	"fewbits/cmd/fewbits/internal/bench"
+)
+
+// Figures that the report treats by name.
+const (
+	snr     = bench.SNR
+	segSNR  = bench.SegSNR
+	openSNR = bench.OpenSNR
+	quiet   = bench.Quiet
+	entropy = "entropy_bits"
+	over    = "overload_fraction"
+	ceiling = "at_upper_limit"
+)
+
+// book finds things in results.
+type book struct {
+	*bench.Results
+	pooled map[string]*bench.Pooled // by spec
+	design map[string]*bench.Design // by spec
+	means  map[string]bench.Definition
+	winner map[string]bool // specs that lead at their bit rate
+}
+
+func open(r *bench.Results) *book {
+	b := &book{
+		Results: r, pooled: map[string]*bench.Pooled{}, design: map[string]*bench.Design{},
+		means: map[string]bench.Definition{}, winner: map[string]bool{},
+	}
+	for i := range r.Pooled {
+		b.pooled[r.Pooled[i].Design] = &r.Pooled[i]
+	}
+	for i := range r.Designs {
+		b.design[r.Designs[i].Spec] = &r.Designs[i]
+	}
+	for _, d := range r.Definitions {
+		b.means[d.Name] = d
+	}
+	for _, v := range r.Verdicts {
+		b.winner[v.Winners[r.Leading]] = true
+	}
+	return b
+}
+
+// figure is a design's pooled figure, NaN where there is none.
+func (b *book) figure(spec, name string) bench.Num {
+	if p := b.pooled[spec]; p != nil {
+		if v, ok := p.Figures[name]; ok {
+			return v
+		}
+	}
+	return bench.Num(nan)
+}
+
+func (b *book) lossless(spec string) bool {
+	p := b.pooled[spec]
+	return p != nil && p.Lossless
+}
+
+// interval is the 95 % interval of the leading figure's mean over clips.
+func (b *book) interval(spec string) [2]bench.Num {
+	if p := b.pooled[spec]; p != nil {
+		return p.Interval
+	}
+	return [2]bench.Num{bench.Num(nan), bench.Num(nan)}
+}
+
+// ranked lists the designs by bits, then by the leading figure, best first.
+func (b *book) ranked() []*bench.Design {
+	var out []*bench.Design
+	for i := range b.Designs {
+		out = append(out, &b.Designs[i])
+	}
+	slices.SortStableFunc(out, func(x, y *bench.Design) int {
+		if x.Bits != y.Bits {
+			return cmp.Compare(x.Bits, y.Bits)
+		}
+		return cmp.Compare(b.rank(y), b.rank(x))
+	})
+	return out
+}
+
+func (b *book) rank(d *bench.Design) float64 {
+	if v := b.figure(d.Spec, b.Leading); v.Defined() {
+		return float64(v)
+	}
+	if b.lossless(d.Spec) {
+		return math.Inf(1)
+	}
+	return math.Inf(-1)
+}
+
+// optimistic lists the designs made on the recordings they are tested on.
+func (b *book) optimistic() (specs []string) {
+	for _, d := range b.Designs {
+		if strings.Contains(d.MadeOn, "tested on") {
+			specs = append(specs, d.Spec)
+		}
+	}
+	return specs
+}
+
+// dash is what stands for an undefined number.
+const dash = "–"
+
+// fixed prints v with so many decimals, a dash where undefined.
+func fixed(v bench.Num, decimals int) string {
+	if !v.Defined() {
+		return dash
+	}
+	s := strconv.FormatFloat(float64(v), 'f', decimals, 64)
+	if strings.Trim(s, "-0.") == "" {
+		s = strings.TrimPrefix(s, "-")
+	}
+	return s
+}
+
+// span prints an interval, empty where undefined.
+func span(v [2]bench.Num) string {
+	if !v[0].Defined() || !v[1].Defined() {
+		return ""
+	}
+	return fixed(v[0], 1) + " to " + fixed(v[1], 1)
+}
+
+// percent prints a share: enough digits that a few samples do not look like none.
+func percent(v bench.Num) string {
+	p := 100 * float64(v)
+	switch {
+	case !v.Defined():
+		return dash
+	case p == 0:
+		return "0"
+	case p < 0.001:
+		return "<0.001"
+	case p < 0.1:
+		return fixed(bench.Num(p), 3)
+	}
+	return fixed(bench.Num(p), 1)
+}
+
+// plain makes text safe for a terminal: what is not printable is escaped.
+func plain(s string) string {
+	return strings.Map(func(r rune) rune {
+		if unicode.IsPrint(r) {
+			return r
+		}
+		return '\uFFFD'
+	}, s)
+}
+
+// short is the name of a figure in a table head, with its unit.
+func (b *book) short(name string) string {
+	switch name {
+	case snr:
+		return "SNR dB"
+	case segSNR:
+		return "segsnr dB"
+	case openSNR:
+		return "open dB"
+	case entropy:
+		return "entropy bit"
+	case over:
+		return "overload %"
+	}
+	if u := b.means[name].Unit; u != "" {
+		return name + " " + u
+	}
+	return name
+}
+
+// sentence ends a text as one.
+func sentence(s string) string {
+	s = strings.TrimSpace(s)
+	if s == "" {
+		return ""
+	}
+	r := []rune(s)
+	// A word such as segsnr_db or a spec keeps its case.
+	if word, _, _ := strings.Cut(s, " "); !strings.ContainsAny(word, "_:.=/0123456789") {
+		r[0] = unicode.ToUpper(r[0])
+	}
+	if !strings.ContainsRune(".!?", r[len(r)-1]) {
+		r = append(r, '.')
+	}
+	return string(r)
+}
+
+var nan = math.NaN()
