@@ -18,10 +18,10 @@ const (
 	lonelyShare = 0.9
 )
 
-// g711 lists the 16-bit output values of both laws. Source: ITU-T Rec. G.711
+// g711Outputs lists the 16-bit output values of both laws. Source: ITU-T Rec. G.711
 // (11/1988), Tables 1 and 2, by the segment rule; mu-law's 14-bit outputs
 // count 4 steps of the 16-bit grid each, A-law's 13-bit ones 8.
-func g711(mu bool) map[int]bool {
+func g711Outputs(mu bool) map[int]bool {
 	set := map[int]bool{}
 	for code := range 128 {
 		seg, m := code>>4, code&15
@@ -48,7 +48,7 @@ func coarse(s *Scan, _ Context) []Finding {
 		name string
 		mu   bool
 	}{{"mu-law", true}, {"A-law", false}} {
-		if s.grid.within(g711(law.mu)) {
+		if s.grid.within(g711Outputs(law.mu)) {
 			return one(companded(law.name, levels))
 		}
 	}

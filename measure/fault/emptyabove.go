@@ -16,8 +16,9 @@ const (
 	// the usual anti-alias filter, and narrowShare that below which a large
 	// part of the band is missing.
 	openShare, narrowShare = 0.92, 0.75
-	// lowestEdge is the lowest edge looked for, in Hz.
-	lowestEdge = 1000.0
+	// lowestEdge is the lowest edge looked for, in Hz: further down, the bands
+	// are too wide to tell an edge from a slope.
+	lowestEdge = 1500.0
 )
 
 // usualRates are the sampling rates an edge is traced back to.
@@ -25,7 +26,10 @@ var usualRates = []float64{6000, 8000, 11025, 12000, 16000, 22050, 24000, 32000,
 
 // edge is where a spectrum ends.
 type edge struct {
-	hertz, drop float64 // the drop compares 3 bands below with the most above
+	// hertz is where; drop is how much less is above, in dB: at a hard edge the
+	// 3 bands below it against the most above, else the octave below against
+	// the most above.
+	hertz, drop float64
 	hard        bool
 }
 
@@ -46,7 +50,7 @@ func emptyAbove(s *Scan, c Context) []Finding {
 	if e.hard && e.hertz < narrowShare*half {
 		f.Severity = Warning
 	}
-	f.Sentence = fmt.Sprintf("nothing but rounding noise above %s", hertz(e.hertz))
+	f.Sentence = fmt.Sprintf("nothing but rounding noise above %s, %.0f dB under the octave below", hertz(e.hertz), e.drop)
 	f.Advice = "figures are those of the band below; resample with --rate if the channel is that narrow"
 	if e.hard {
 		f.Sentence = fmt.Sprintf("spectrum empty above %s: it drops by %.0f dB there and stays down to %s%s",
@@ -78,11 +82,11 @@ func (s *spectra) findEdge(level []float64, ground float64) (edge, bool) {
 	best := edge{}
 	sink := n
 	for j := n - 1; j >= edgeBands; j-- {
-		if s.hertz(j) < lowestEdge {
-			break
-		}
 		if top[j] <= ground+sunk {
 			sink = j
+		}
+		if s.hertz(j-edgeBands) < lowestEdge {
+			continue
 		}
 		below := (level[j-6] + level[j-5] + level[j-4]) / 3
 		if drop := below - top[j]; drop >= edgeDrop && drop > best.drop {
@@ -93,7 +97,14 @@ func (s *spectra) findEdge(level []float64, ground float64) (edge, bool) {
 	if best.hard && best.hertz < limit {
 		return best, true
 	}
-	return edge{hertz: s.hertz(sink)}, s.hertz(sink) < limit
+	if sink == n || s.hertz(sink) >= limit {
+		return edge{}, false
+	}
+	var octave float64
+	for _, l := range level[sink/2 : sink] {
+		octave += l / float64(sink-sink/2)
+	}
+	return edge{hertz: s.hertz(sink), drop: octave - top[sink]}, true
 }
 
 // crossing is the first band of the transition below j that is under half.
