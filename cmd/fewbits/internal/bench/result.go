@@ -181,6 +181,16 @@ type Verdict struct {
 	Sentence string            `json:"sentence"`
 }
 
+// Saving is how many bits a sample a design saves against a family at equal
+// leading figure, interpolated over that family's numbers of bits; negative
+// where it costs bits, undefined where the family's designs do not reach it.
+type Saving struct {
+	Design   string `json:"design"`  // spec
+	Against  string `json:"against"` // family: "mu-law", "uniform"
+	Bits     Num    `json:"bits"`
+	Interval [2]Num `json:"interval"` // 95 %, bits
+}
+
 // Refusal is one recording that was not used, and why.
 type Refusal struct {
 	File   string `json:"file"`

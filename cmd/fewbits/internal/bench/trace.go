@@ -11,9 +11,35 @@ type Traces struct {
 	Edges    []float64 `json:"edges"`
 	Negative []float64 `json:"negative"`
 	Positive []float64 `json:"positive"`
-	Spread   []Spread  `json:"spread"`
-	Sweep    []Curve   `json:"sweep"`
-	Sine     []Curve   `json:"sine"`
+	// Models are the amplitude models fitted to all clips together, with their
+	// densities to draw over the histogram.
+	Models []ModelCurve `json:"models"`
+	// Bounds are Shannon's lower bounds on the error of memoryless sources with
+	// these models' densities: the models', not the recordings'.
+	Bounds []Bound  `json:"bounds"`
+	Spread []Spread `json:"spread"`
+	Sweep  []Curve  `json:"sweep"`
+	Sine   []Curve  `json:"sine"`
+	// Noise is the noise test, as Sine; its limits draw no verdict.
+	Noise []Curve `json:"noise,omitempty"`
+}
+
+// ModelCurve is the density of a fitted model, symmetric about 0.
+type ModelCurve struct {
+	Fit
+	// Magnitude ascends, full scale = 1.0, above 0; Density is p(x) = p(-x) per
+	// unit of full scale (it integrates to 1/2 over the magnitudes).
+	Magnitude []float64 `json:"magnitude"`
+	Density   []Num     `json:"density"`
+}
+
+// Bound is the largest SNR that any code of so many bits a sample can reach on
+// a memoryless source with the model's density (Shannon's lower bound on the
+// error): a straight line of 6.02 dB a bit, at ascending bits.
+type Bound struct {
+	Model string    `json:"model"`
+	Bits  []float64 `json:"bits"`
+	SNRDB []Num     `json:"snr_db"`
 }
 
 // ClipTrace is one clip over time, first channel, at most 2,000 points.
