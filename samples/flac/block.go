@@ -1,0 +1,64 @@
+package flac
+
+import (
+	"github.com/mewkiz/flac/frame"
+
+	"fewbits/samples/wave"
+)
+
+// write sums a decoded block and writes it out.
+func (d *decoder) write(at int64, f *frame.Frame) error {
+	n := int(f.BlockSize)
+	if err := d.inRange(at, f, n); err != nil {
+		return err
+	}
+	bits := int(f.BitsPerSample)
+	d.plain = interleave(d.plain, f, n, (bits+7)/8, 0)
+	d.sum.Write(d.plain)
+	d.packed = d.plain
+	if stored := d.f.Encoding.Bits(); stored != bits {
+		d.packed = interleave(nil, f, n, stored/8, stored-bits)
+	}
+	if d.limit -= int64(len(d.packed)); d.limit < 0 {
+		return &wave.Fault{Offset: at, What: "FLAC: the file unpacks to more than 256 MiB and 1200 times its size",
+			Remedy: "convert it to WAV first if it is a recording"}
+	}
+	d.f.Frames += int64(n)
+	_, err := d.out.Write(d.packed)
+	return err
+}
+
+// inRange checks that a block's samples fit the stream's bits: damage that the
+// block's own checksum does not see.
+func (d *decoder) inRange(at int64, f *frame.Frame, n int) error {
+	top := int32(1) << (f.BitsPerSample - 1)
+	for c, s := range f.Subframes {
+		if len(s.Samples) != n {
+			return d.fault(at, "channel %d of the block has %d of %d samples", c+1, len(s.Samples), n)
+		}
+		for _, v := range s.Samples {
+			if v < -top || v >= top {
+				return d.fault(at, "the block's samples leave %d bits", f.BitsPerSample)
+			}
+		}
+	}
+	return nil
+}
+
+// interleave stores a block little-endian in size bytes a sample, shifted up.
+func interleave(b []byte, f *frame.Frame, n, size, shift int) []byte {
+	step := size * len(f.Subframes)
+	if cap(b) < n*step {
+		b = make([]byte, n*step)
+	}
+	b = b[:n*step]
+	for c, s := range f.Subframes {
+		for i, v := range s.Samples[:n] {
+			v <<= shift
+			for k, at := 0, i*step+c*size; k < size; k++ {
+				b[at+k] = byte(v >> (8 * k))
+			}
+		}
+	}
+	return b
+}

@@ -1,0 +1,212 @@
+package flac
+
+import (
+	"bufio"
+	"crypto/md5"
+	"errors"
+	"fmt"
+	"hash"
+	"io"
+
+	lib "github.com/mewkiz/flac"
+	"github.com/mewkiz/flac/frame"
+	"github.com/mewkiz/flac/meta"
+
+	"fewbits/samples/wave"
+)
+
+// A file may unpack to base bytes, and beyond that to ratio times its size:
+// more than digital silence packs to in the usual blocks of 4096 samples.
+const (
+	base  = 256 << 20
+	ratio = 1200
+)
+
+const (
+	damaged  = "the file is damaged; get a good copy"
+	complete = "get a complete copy if the tail matters"
+)
+
+// decoder is a file being decoded.
+type decoder struct {
+	in     *counter
+	size   int64
+	out    io.Writer
+	info   *meta.StreamInfo
+	sum    hash.Hash
+	f      wave.Format
+	packed []byte // a block as it is written
+	plain  []byte // a block as it is summed
+	limit  int64  // bytes that may still be written
+	ended  bool
+}
+
+// Decode writes the samples of the FLAC file of size bytes behind r to w,
+// interleaved, two's complement with the valid bits at the top, and says what
+// they are: PCM16 up to 16 bits, PCM24 up to 24. A file that cannot be used
+// gives a *wave.Fault; a failure of r or w its own error. A file that ends early
+// is decoded as far as it goes, with a warning.
+func Decode(r io.ReaderAt, size int64, w io.Writer) (f *wave.Format, err error) {
+	quieten()
+	start := tagged(r)
+	d := &decoder{in: newCounter(r, start, size), size: size, out: w, sum: md5.New(), limit: base + ratio*size}
+	defer func() {
+		if p := recover(); p != nil {
+			f, err = nil, d.fault(d.in.at(), "the decoder failed (%v)", p)
+		}
+	}()
+	if err := d.open(start); err != nil {
+		return nil, err
+	}
+	for err == nil && !d.ended {
+		err = d.block()
+	}
+	if err != nil {
+		return nil, err
+	}
+	return d.settle()
+}
+
+func (d *decoder) fault(at int64, format string, args ...any) error {
+	return &wave.Fault{Offset: at, What: "FLAC: " + fmt.Sprintf(format, args...), Remedy: damaged}
+}
+
+// open reads the stream's header.
+func (d *decoder) open(start int64) error {
+	stream, err := lib.New(d.in.r)
+	if err != nil {
+		return d.fault(start, "no usable stream header (%v)", err)
+	}
+	d.info = stream.Info
+	i := d.info
+	switch {
+	case i.BitsPerSample < 4 || i.BitsPerSample > 24:
+		return &wave.Fault{Offset: start + 20, What: fmt.Sprintf("FLAC samples of %d bits are not read", i.BitsPerSample),
+			Remedy: "convert it to 24 bits or to WAV first"}
+	case i.SampleRate < wave.MinRate || i.SampleRate > wave.MaxRate:
+		return d.fault(start+18, "the header says %d Hz; %d to %d Hz are read", i.SampleRate, wave.MinRate, wave.MaxRate)
+	}
+	d.f = wave.Format{Encoding: wave.PCM16, Rate: int(i.SampleRate), Channels: int(i.NChannels), ValidBits: int(i.BitsPerSample)}
+	if i.BitsPerSample > 16 {
+		d.f.Encoding = wave.PCM24
+	}
+	return nil
+}
+
+// block decodes one block of samples, or sees that there are no more.
+func (d *decoder) block() error {
+	if n := int64(d.info.NSamples); n > 0 && d.f.Frames >= n {
+		d.ended = true
+		if rest := d.size - d.in.at(); rest > 0 {
+			d.warn(d.in.at(), "%d bytes behind the last block are left out", rest)
+		}
+		return nil
+	}
+	at := d.in.at()
+	f, err := frame.New(d.in.r)
+	if err == nil {
+		if f.BitsPerSample == 0 {
+			f.BitsPerSample = d.info.BitsPerSample // the library leaves that to its caller
+		}
+		if err = d.agrees(f); err == nil {
+			err = f.Parse()
+		}
+	}
+	if err != nil {
+		return d.broken(at, err)
+	}
+	return d.write(at, f)
+}
+
+// agrees checks a block's header against the stream's.
+func (d *decoder) agrees(f *frame.Frame) error {
+	switch {
+	case f.BitsPerSample != d.info.BitsPerSample:
+		return fmt.Errorf("a block of %d bits in a stream of %d", f.BitsPerSample, d.info.BitsPerSample)
+	case f.Channels.Count() != int(d.info.NChannels):
+		return fmt.Errorf("a block of %d channels in a stream of %d", f.Channels.Count(), d.info.NChannels)
+	case f.SampleRate != 0 && f.SampleRate != d.info.SampleRate:
+		return fmt.Errorf("a block at %d Hz in a stream at %d Hz", f.SampleRate, d.info.SampleRate)
+	case f.BlockSize == 0:
+		return errors.New("a block of 65536 samples; 65535 is the most")
+	}
+	return nil
+}
+
+// broken settles a block that could not be decoded: the end of the file, or
+// damage within it.
+func (d *decoder) broken(at int64, err error) error {
+	left := d.size - at
+	most := int64(d.info.BlockSizeMax)*int64(d.info.NChannels)*4 + 1<<10
+	switch {
+	case d.in.err != nil:
+		return d.in.err
+	case d.f.Frames == 0 && left <= 0:
+		return d.fault(at, "no samples")
+	case left <= 0:
+		d.ended = true
+	case d.f.Frames > 0 && left < most && (errors.Is(err, io.EOF) || errors.Is(err, io.ErrUnexpectedEOF)):
+		d.ended = true
+		d.warn(at, "the last block is cut off and left out; %s", complete)
+	case d.f.Frames > 0 && errors.Is(err, frame.ErrInvalidSync) && d.info.NSamples == 0 && d.known() && d.matches():
+		d.ended = true
+		d.warn(at, "%d bytes behind the last block are left out", left)
+	default:
+		return d.fault(at, "block at sample %d: %v", d.f.Frames, err)
+	}
+	return nil
+}
+
+func (d *decoder) warn(at int64, format string, args ...any) {
+	d.f.Warnings = append(d.f.Warnings, fmt.Sprintf("byte %d: ", at)+fmt.Sprintf(format, args...))
+}
+
+func (d *decoder) known() bool   { return d.info.MD5sum != [md5.Size]byte{} }
+func (d *decoder) matches() bool { return [md5.Size]byte(d.sum.Sum(nil)) == d.info.MD5sum }
+
+// settle compares what was decoded with what the header promised.
+func (d *decoder) settle() (*wave.Format, error) {
+	n := int64(d.info.NSamples)
+	switch {
+	case d.f.Frames == 0:
+		return nil, d.fault(d.size, "no samples")
+	case d.f.Frames < n:
+		d.warn(d.size, "the file ends after %d of %d samples, so its checksum cannot be checked; %s", d.f.Frames, n, complete)
+	case d.f.Frames > n && n > 0:
+		return nil, d.fault(d.size, "%d samples where the header says %d", d.f.Frames, n)
+	case !d.known():
+		d.warn(0, "the file carries no checksum of its audio, so damage would not be seen")
+	case !d.matches():
+		return nil, d.fault(0, "the decoded audio does not match the file's checksum")
+	}
+	return &d.f, nil
+}
+
+// counter is a buffered reader that knows its place in the file.
+type counter struct {
+	r    *bufio.Reader
+	src  *io.SectionReader
+	base int64
+	err  error // of reading the file, but for its end
+}
+
+func newCounter(r io.ReaderAt, start, size int64) *counter {
+	c := &counter{src: io.NewSectionReader(r, start, max(0, size-start)), base: start}
+	c.r = bufio.NewReaderSize(c, 1<<16)
+	return c
+}
+
+// Read passes on and remembers a failure.
+func (c *counter) Read(b []byte) (int, error) {
+	n, err := c.src.Read(b)
+	if err != nil && err != io.EOF {
+		c.err = err
+	}
+	return n, err
+}
+
+// at is the offset of the next byte to be decoded.
+func (c *counter) at() int64 {
+	read, _ := c.src.Seek(0, io.SeekCurrent)
+	return c.base + read - int64(c.r.Buffered())
+}

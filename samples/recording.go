@@ -1,0 +1,152 @@
+package samples
+
+import (
+	"crypto/sha256"
+	"encoding/hex"
+	"errors"
+	"fmt"
+	"io"
+	"io/fs"
+	"os"
+
+	"fewbits/samples/flac"
+	"fewbits/samples/wave"
+)
+
+// Recording is an opened recording. Its methods may be called from several
+// goroutines at once, but for Close.
+type Recording struct {
+	info   Info
+	file   *os.File   // as the user named it
+	spool  *spool     // where the samples are, if not in file
+	origin *Recording // what this one was prepared from; owned
+	enc    wave.Encoding
+	start  int64 // of the samples in file or spool
+}
+
+// Open opens a WAV or FLAC file, told apart by content. What cannot be used
+// gives an *Error.
+func Open(path string) (*Recording, error) {
+	r, err := open(path)
+	if err != nil {
+		return nil, &Error{path, plain(err)}
+	}
+	return r, nil
+}
+
+func open(path string) (*Recording, error) {
+	stat, err := os.Stat(path)
+	if err != nil {
+		return nil, err
+	}
+	if !stat.Mode().IsRegular() {
+		return nil, errors.New("not a regular file: give a recording or a folder of recordings")
+	}
+	file, err := os.Open(path)
+	if err != nil {
+		return nil, err
+	}
+	r := &Recording{file: file}
+	if err := r.recognize(path, stat.Size()); err != nil {
+		r.Close()
+		return nil, err
+	}
+	return r, nil
+}
+
+// recognize finds out where and how the samples are stored.
+func (r *Recording) recognize(path string, size int64) (err error) {
+	if flac.Is(r.file) {
+		return r.unpack(path, size)
+	}
+	f, err := wave.Walk(r.file, size)
+	if err != nil {
+		return err
+	}
+	r.info, r.enc, r.start = infoOf(path, f.Container, size, f), f.Encoding, f.DataStart
+	return r.checkFinite()
+}
+
+// unpack decodes a FLAC file into a spool.
+func (r *Recording) unpack(path string, size int64) (err error) {
+	if r.spool, err = newSpool(); err != nil {
+		return err
+	}
+	f, err := flac.Decode(r.file, size, r.spool)
+	if err != nil {
+		return err
+	}
+	r.info, r.enc = infoOf(path, "FLAC", size, f), f.Encoding
+	r.info.Bits = f.ValidBits // a FLAC file stores no more
+	return r.spool.flush()
+}
+
+// checkFinite refuses float samples that are no numbers.
+func (r *Recording) checkFinite() error {
+	if !r.enc.Float() {
+		return nil
+	}
+	frames := make([]byte, blockFrames(r.frameBytes())*r.frameBytes())
+	for at, end := int64(0), r.info.Frames*int64(r.frameBytes()); at < end; at += int64(len(frames)) {
+		frames = frames[:min(int64(len(frames)), end-at)]
+		if err := r.bytes(frames, at); err != nil {
+			return err
+		}
+		if i := r.enc.NotFinite(frames); i >= 0 {
+			at += int64(i * r.enc.Bytes())
+			return &wave.Fault{Offset: r.start + at, Remedy: "export it again from the program that made it",
+				What: fmt.Sprintf("sample %d of channel %d is NaN or infinite", at/int64(r.frameBytes()), i%r.info.Channels+1)}
+		}
+	}
+	return nil
+}
+
+// plain takes the path out of a file system's error; it stands before anyway.
+func plain(err error) error {
+	var p *fs.PathError
+	if errors.As(err, &p) {
+		switch {
+		case errors.Is(err, fs.ErrNotExist):
+			return fmt.Errorf("no such file or folder: check the name")
+		case errors.Is(err, fs.ErrPermission):
+			return fmt.Errorf("permission denied: make it readable for you")
+		}
+		return p.Err
+	}
+	return err
+}
+
+// Info says what is known of the recording.
+func (r *Recording) Info() Info { return r.info }
+
+// Words says whether every sample lies on the 16-bit grid by its format (PCM up
+// to 16 bits, G.711), so that ReadWords may be used.
+func (r *Recording) Words() bool { return r.enc.OnWords() }
+
+// SHA256 is the hexadecimal digest of the file's bytes, for a prepared recording
+// of the file it was made from.
+func (r *Recording) SHA256() (string, error) {
+	if r.origin != nil {
+		return r.origin.SHA256()
+	}
+	h := sha256.New()
+	if _, err := io.Copy(h, io.NewSectionReader(r.file, 0, r.info.Bytes)); err != nil {
+		return "", &Error{r.info.Path, plain(err)}
+	}
+	return hex.EncodeToString(h.Sum(nil)), nil
+}
+
+// Close lets go of the file and of what was made from it.
+func (r *Recording) Close() error {
+	var errs []error
+	if r.spool != nil {
+		errs = append(errs, r.spool.Close())
+	}
+	if r.origin != nil {
+		errs = append(errs, r.origin.Close())
+	}
+	if r.file != nil {
+		errs = append(errs, r.file.Close())
+	}
+	return errors.Join(errs...)
+}

@@ -1,0 +1,4 @@
+package samples
+
+// tempVariable names the environment variable for the temporary folder.
+const tempVariable = "TMP"
