@@ -185,3 +185,49 @@ func BenchmarkAddFrame(b *testing.B) {
 		AddFrame(&t, Frame{Samples: 160, Signal: 0.1, Error: 1e-4, InRange: true, Floor: 1e-9}, CustomaryLimits)
 	}
 }
+
+func BenchmarkToggles(b *testing.B) {
+	words := speechLike(480000, 7)
+	const designs = 12
+	k := NewToggles(someDesigns(designs))
+	changes := make([]int64, designs)
+	for b.Loop() {
+		for f := 0; f+160 <= len(words); f += 160 {
+			k.Add(words[f:f+160], changes)
+		}
+	}
+	perSecond(b, len(words)*designs, "sample-designs/s")
+}
+
+func BenchmarkSweepPoint(b *testing.B) {
+	var h Histogram
+	h.AddWords(speechLike(480000, 7))
+	values, counts := h.Sparse()
+	th, v := smoothCells(8, expandMu)
+	s := NewSearch(th, v, -1, 1, true)
+	for b.Loop() {
+		s.SNRAt(values, counts, -7)
+	}
+	b.ReportMetric(float64(len(values)), "values")
+}
+
+func BenchmarkCompare(b *testing.B) {
+	for _, n := range []int{29, 100} {
+		v := make([][]float64, 12)
+		r := rand.New(rand.NewPCG(1, 1))
+		for d := range v {
+			for range n {
+				v[d] = append(v[d], r.NormFloat64())
+			}
+		}
+		name := "t"
+		if n >= BootstrapFrom {
+			name = "bootstrap"
+		}
+		b.Run(name, func(b *testing.B) {
+			for b.Loop() {
+				Compare(Units{Values: v}, 1)
+			}
+		})
+	}
+}

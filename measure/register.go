@@ -25,6 +25,7 @@ var Register = []Measure{
 	quietSNR,
 	idleLevel,
 	idleGain,
+	toggleShare,
 	matchGain,
 }
 

@@ -18,7 +18,7 @@ func worked() Tally {
 		},
 		FramesIn: 4, FramesOut: 1, FramesSilent: 7,
 		SignalOut: 1e-3, ErrorOut: 1e-5, SignalIn: 50, CrossIn: 49,
-		SamplesOut: 100, OutputOut: 1e-4,
+		SamplesOut: 100, OutputOut: 1e-4, Toggled: 3, Steps: 12,
 	}
 }
 
@@ -29,7 +29,7 @@ func TestRegister(t *testing.T) {
 		"at_upper_limit": 0.25, "at_lower_limit": 0.5, "all_at_upper_limit": 0.4, "all_at_lower_limit": 0,
 		"open_at_upper_limit": 0, "open_at_lower_limit": 0.25, "floored": 0.75,
 		"overload_fraction": 0.02, "granular_mse": 7.5e-4, "overload_mse": 2.5e-4, "entropy_bits": 2,
-		"quiet_snr_db": 20, "idle_dbov": -60, "idle_gain_db": -10, "match_b": 0.98,
+		"quiet_snr_db": 20, "idle_dbov": -60, "idle_gain_db": -10, "match_b": 0.98, "idle_toggling": 0.25,
 	}
 	tally := worked()
 	name := regexp.MustCompile(`^[a-z][a-z_]*$`)

@@ -79,10 +79,7 @@ func (s *Search) Index(x float64) int {
 	for k < end && t[k] <= x {
 		k++
 	}
-	if s.tieOut && x < 0 && k > 0 && t[k-1] == x {
-		k--
-	}
-	return k
+	return s.settleTie(k, x)
 }
 
 // Quantize returns the reconstruction value of x.

@@ -47,6 +47,9 @@ type Tally struct {
 	// silent ones included; OutputOut is sum y^2 over them (idle level).
 	SamplesOut int64
 	OutputOut  float64
+	// Toggled of Steps samples of these frames differ in output from the one
+	// before (the first of a frame has none before).
+	Toggled, Steps int64
 }
 
 // Merge adds what o summed after t: figures of t are then pooled over both.
@@ -73,6 +76,8 @@ func (t *Tally) Merge(o *Tally) {
 	t.CrossIn += o.CrossIn
 	t.SamplesOut += o.SamplesOut
 	t.OutputOut += o.OutputOut
+	t.Toggled += o.Toggled
+	t.Steps += o.Steps
 }
 
 // Segments sums one segmental measure over frames.
