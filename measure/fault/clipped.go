@@ -37,7 +37,7 @@ func clipped(s *Scan, c Context) []Finding {
 	}{{r.upper, 0}, {r.lower, 1}} {
 		switch t := side.top; {
 		case t.samples == 0:
-		case beyondSign(t.value, side.sign) >= fullScale:
+		case math.Abs(beyondSign(t.value, side.sign)-1) <= 1-fullScale:
 			full.merge(t)
 		case s.flatBelow(t, side.sign, s.lsb(c)):
 			below.merge(t)
@@ -48,7 +48,7 @@ func clipped(s *Scan, c Context) []Finding {
 	case full.samples >= 3 || full.longest >= 2:
 		return one(s.clipFinding("at full scale", full))
 	case below.samples > 0:
-		return one(s.clipFinding(fmt.Sprintf("flat at %.2f dB below full scale", -20*math.Log10(at)), below))
+		return one(s.clipFinding(fmt.Sprintf("on a flat top at %.2f dB", decibel(20*math.Log10(at))), below))
 	}
 	return s.crowded(s.lsb(c))
 }

@@ -64,7 +64,7 @@ func emptyAbove(s *Scan, c Context) []Finding {
 func origin(at, half float64) string {
 	for _, r := range usualRates {
 		if r/2 < half && at <= 1.02*r/2 && at >= 0.8*r/2 {
-			return fmt.Sprintf(", as after up-sampling from %s", hertz(r))
+			return fmt.Sprintf(", as after up-sampling from %s", fmt.Sprintf("%g kHz", r/1000))
 		}
 	}
 	return ", as after a low-pass filter or a coder's band limit"

@@ -237,6 +237,48 @@ func TestNoRatePanics(t *testing.T) {
 	NewScan(0)
 }
 
+// Float recordings beyond full scale; flat tops up there are clipped too.
+func TestBeyondFullScale(t *testing.T) {
+	x := amplitudes(talk(4, 9))
+	for i := range x {
+		x[i] *= 6.1
+	}
+	got := func(x []float64) []Finding {
+		s := NewScan(testRate)
+		s.Add(x)
+		c := contextOf(x, testRate)
+		c.LSB, c.Bits = 0, 0
+		return s.Findings(c)
+	}
+	expect(t, "loud", got(x), []string{"beyond-full-scale"}, []string{"clipped"})
+	for i := range x {
+		x[i] = max(-1.2, min(1.2, x[i]))
+	}
+	expect(t, "loud and flat", got(x), []string{"beyond-full-scale", "clipped"}, nil)
+	for i := range x {
+		x[i] = max(-1, min(1, x[i]))
+	}
+	expect(t, "flat at 1", got(x), []string{"clipped"}, []string{"beyond-full-scale"})
+}
+
+// Whatever the rate and the samples, no panic, and findings that can be
+// written as JSON.
+func TestAnything(t *testing.T) {
+	rapid.Check(t, func(rt *rapid.T) {
+		s := NewScan(rapid.IntRange(1, 100000).Draw(rt, "rate"))
+		part := rapid.SliceOfN(rapid.OneOf(rapid.Float64Range(-1, 1), rapid.SampledFrom([]float64{0, 1, -1, 1e300, -1e300, 1e-300, 0x1p-31, 0x1p-40})), 1, 50).Draw(rt, "part")
+		var x []float64
+		for range rapid.IntRange(1, 200).Draw(rt, "times") {
+			x = append(x, part...)
+		}
+		s.Add(x)
+		got := s.Findings(contextOf(x, s.rate))
+		if _, err := json.Marshal(got); err != nil {
+			rt.Fatalf("%v: %+v", err, got)
+		}
+	})
+}
+
 func BenchmarkScan(b *testing.B) {
 	words := talk(60, 1)
 	x := amplitudes(words)

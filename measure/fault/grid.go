@@ -9,6 +9,7 @@ type grid struct {
 	off    int64   // samples on no 16-bit amplitude
 	low    uint64  // OR of all off-grid samples as integers on 2^-31
 	finer  bool    // a sample lies on no 2^-31 amplitude either
+	over   int64   // samples beyond full scale
 	total  int64
 }
 
@@ -29,6 +30,9 @@ func (g *grid) add(x []float64) {
 // addOff takes a sample, in 16-bit steps, that no 16-bit word expresses.
 func (g *grid) addOff(v float64) {
 	g.off++
+	if v > 1<<15 || v < -1<<15 {
+		g.over++
+	}
 	v *= 1 << 16
 	if i := int64(v); float64(i) == v {
 		g.low |= uint64(i)

@@ -18,7 +18,7 @@ const (
 
 // wrongLevel reports speech too quiet or too hot for its scale.
 func wrongLevel(s *Scan, c Context) []Finding {
-	if math.IsNaN(c.ActiveDBov) {
+	if !(math.Abs(c.ActiveDBov) <= math.MaxFloat64) {
 		return noLevel(s)
 	}
 	off := c.ActiveDBov - customary
@@ -30,11 +30,11 @@ func wrongLevel(s *Scan, c Context) []Finding {
 		f.Advice = "bring it up with --level -26, or record with more gain: low bits lost at recording stay lost"
 	case off > apart:
 		f.Kind = "hot"
-		f.Sentence = fmt.Sprintf("hot: active level %.1f dBov, %.0f dB above the customary -26, peak %.1f dB", c.ActiveDBov, off, c.PeakDB)
+		f.Sentence = fmt.Sprintf("hot: active level %.1f dBov, %.0f dB above the customary -26, peak %.1f dB", c.ActiveDBov, off, decibel(c.PeakDB))
 		f.Advice = "bring it down with --level -26 unless the channel runs this hot: overload decides the figures otherwise"
 	case c.PeakDB > headroom:
 		f.Kind, f.Value, f.Unit = "hot", c.PeakDB, "dB"
-		f.Sentence = fmt.Sprintf("no headroom: peak %.2f dB at an active level of %.1f dBov", c.PeakDB, c.ActiveDBov)
+		f.Sentence = fmt.Sprintf("no headroom: peak %.2f dB at an active level of %.1f dBov", decibel(c.PeakDB), c.ActiveDBov)
 		f.Advice = "look at the peaks for clipping; --level -26 leaves room for designs with a lower overload point"
 	default:
 		return nil

@@ -54,7 +54,7 @@ func cutOut(s *Scan, _ Context) []Finding {
 	}
 	return one(Finding{
 		Kind: "cut-out", Severity: Warning, Value: float64(g.runs), Unit: "runs",
-		Sentence: fmt.Sprintf("%s of zeros break off in the middle of sound, the longest %.1f ms, as lost packets or buffers leave them",
+		Sentence: fmt.Sprintf("cut out: %s of zeros in the middle of sound, the longest %.1f ms, as lost packets or buffers leave them",
 			plural(g.runs, "run"), 1000*float64(g.longest)/float64(s.rate)),
 		Advice: "record again, or leave the stretch out with --from and --to",
 	})

@@ -13,6 +13,8 @@ const (
 	segmentSeconds = 0.021
 	// bandBins is the width of a band in bins of the transform.
 	bandBins = 4
+	// highest bounds a density, so that no sum of them overflows.
+	highest = 1e30
 	// maxSegments is how many segments are kept, evenly spread.
 	maxSegments = 512
 )
@@ -102,7 +104,10 @@ func (s *spectra) bands() []float32 {
 		for _, c := range s.coeff[j*bandBins : (j+1)*bandBins] {
 			sum += real(c)*real(c) + imag(c)*imag(c)
 		}
-		out[j] = float32(sum * s.scale / bandBins)
+		if sum *= s.scale / bandBins; !(sum <= highest) {
+			sum = highest // absurd float samples
+		}
+		out[j] = float32(sum)
 	}
 	return out
 }
