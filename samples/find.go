@@ -101,7 +101,7 @@ next:
 		k := key{stat.Size(), stat.ModTime().UnixNano()}
 		for _, other := range seen[k] {
 			if os.SameFile(stat, other.stat) {
-				s.refuse(path, "the same file as %q: give it once", other.path)
+				s.refuse(path, "%s: give it once", again(path, other.path))
 				continue next
 			}
 		}
@@ -109,4 +109,11 @@ next:
 		files = append(files, path)
 	}
 	s.files = files
+}
+
+func again(path, other string) string {
+	if path == other {
+		return "given twice"
+	}
+	return fmt.Sprintf("the same file as %q", other)
 }

@@ -1,0 +1,154 @@
+package prepare
+
+import (
+	"fmt"
+	"math"
+
+	"fewbits/samples"
+)
+
+// Apply carries out a plan. It gives the prepared recording, which then owns r
+// (closing it closes r too), and what was done, a line a step. Where nothing
+// was to be done it gives r itself and no lines. After an error r is still the
+// caller's.
+func Apply(r *samples.Recording, p Plan) (*samples.Recording, []string, error) {
+	made, done, err := apply(r, p)
+	if err != nil {
+		return nil, nil, &samples.Error{Path: r.Info().Path, Err: err}
+	}
+	return made, done, nil
+}
+
+func apply(r *samples.Recording, p Plan) (*samples.Recording, []string, error) {
+	if err := p.Check(); err != nil {
+		return nil, nil, err
+	}
+	from, to, err := p.stretch(r.Info())
+	if err != nil {
+		return nil, nil, err
+	}
+	j := &job{r: r, plan: p, view: newView(r, p.Channel, from, to), rate: r.Info().Rate}
+	if err := j.prepare(); err != nil {
+		return nil, nil, err
+	}
+	if len(j.done) == 0 {
+		return r, nil, nil
+	}
+	made, err := j.make()
+	return made, j.done, err
+}
+
+// job is a plan being carried out.
+type job struct {
+	r      *samples.Recording
+	plan   Plan
+	view   *view
+	rate   int
+	filter *filter
+	gain   float64
+	over   int64
+	draft  *samples.Draft
+	done   []string
+}
+
+func (j *job) did(format string, args ...any) { j.done = append(j.done, fmt.Sprintf(format, args...)) }
+
+// prepare settles each step and says what it will have done.
+func (j *job) prepare() (err error) {
+	i, v, p := j.r.Info(), j.view, j.plan
+	if v.frames != i.Frames {
+		j.did("cut to %.6g ... %.6g s", float64(v.from)/float64(i.Rate), float64(v.from+v.frames)/float64(i.Rate))
+	}
+	switch {
+	case v.first:
+		j.did("first of %d channels", i.Channels)
+	case v.mix:
+		j.did("mean of %d channels", i.Channels)
+	}
+	if p.RemoveDC {
+		if err = v.removeDC(); err != nil {
+			return err
+		}
+		j.did("DC of %s removed", list(v.dc))
+	}
+	if p.Rate != 0 && p.Rate != i.Rate {
+		if j.filter, err = newFilter(i.Rate, p.Rate); err != nil {
+			return err
+		}
+		j.rate = p.Rate
+		j.did("resampled from %d to %d Hz (pass band to %.0f Hz, stop band -100 dB from %.0f Hz)", i.Rate, p.Rate,
+			passEdge*float64(min(i.Rate, p.Rate))/2, float64(min(i.Rate, p.Rate))/2)
+	}
+	if p.GainDB != 0 {
+		j.gain = math.Pow(10, p.GainDB/20)
+		j.did("gain of %+.2f dB", p.GainDB)
+	}
+	return nil
+}
+
+// list shows one figure a channel.
+func list(x []float64) string {
+	s := ""
+	for c, v := range x {
+		if c > 0 {
+			s += ", "
+		}
+		s += fmt.Sprintf("%+.3g", v)
+	}
+	return s
+}
+
+// make runs the samples through the steps into a new recording.
+func (j *job) make() (made *samples.Recording, err error) {
+	words := j.view.words() && j.filter == nil && j.gain == 0
+	if j.draft, err = j.r.Draft(j.rate, j.view.channels, words); err != nil {
+		return nil, err
+	}
+	switch {
+	case words:
+		err = j.copyWords()
+	case j.filter != nil:
+		err = j.filter.resample(j.view, j.finish)
+	default:
+		err = j.view.blocks(func(planes [][]float64, _ int64) error { return j.finish(planes) })
+	}
+	if err != nil {
+		j.draft.Drop()
+		return nil, err
+	}
+	if j.over > 0 {
+		j.draft.Warn(fmt.Sprintf("the gain of %+.2f dB takes %d samples beyond full scale: choose a lower level", j.plan.GainDB, j.over))
+	}
+	return j.draft.Recording()
+}
+
+// copyWords keeps words words.
+func (j *job) copyWords() error {
+	v, size := j.view, int64(blockSize(j.view.channels))
+	planes := grid[int16](v.channels, int(size))
+	for at := int64(0); at < v.frames; at += size {
+		part := shorten(planes, v.frames-at)
+		if err := v.readWords(part, at); err != nil {
+			return err
+		}
+		if err := j.draft.AppendWords(part); err != nil {
+			return err
+		}
+	}
+	return nil
+}
+
+// finish applies the gain, counts what it takes beyond full scale, and stores.
+func (j *job) finish(planes [][]float64) error {
+	if j.gain != 0 {
+		for _, p := range planes {
+			for i, x := range p {
+				p[i] = x * j.gain
+				if math.Abs(p[i]) > 1 && math.Abs(x) <= 1 {
+					j.over++
+				}
+			}
+		}
+	}
+	return j.draft.Append(planes)
+}
