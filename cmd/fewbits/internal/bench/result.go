@@ -47,16 +47,17 @@ type Results struct {
 	Definitions []Definition `json:"definitions"` // one per figure, in table order
 	Leading     string       `json:"leading"`     // the figure that decides: segsnr_db or segsnr_open_db
 	LeadingWhy  string       `json:"leading_why"` // one sentence
-	// IntervalsBy says in a few words how the 95 % intervals were made, for
-	// example "paired t on 5 clips" or "blocks, these recordings only".
-	IntervalsBy string    `json:"intervals_by"`
-	Clips       []Clip    `json:"clips"`    // by path
-	Designs     []Design  `json:"designs"`  // in order asked
-	Results     []Result  `json:"results"`  // clips x designs
-	Pooled      []Pooled  `json:"pooled"`   // one per design
-	Verdicts    []Verdict `json:"verdicts"` // one per bit rate
-	Refused     []Refusal `json:"refused"`
-	Warnings    []string  `json:"warnings"` // about the run as a whole
+	// IntervalMethod says in words how the 95 % intervals were made.
+	IntervalMethod string    `json:"interval_method"`
+	Clips          []Clip    `json:"clips"`    // by path
+	Designs        []Design  `json:"designs"`  // in order asked
+	Results        []Result  `json:"results"`  // clips x designs
+	Pooled         []Pooled  `json:"pooled"`   // one per design
+	Verdicts       []Verdict `json:"verdicts"` // one per bit rate
+	// Savings of the winners, against the plain mu-law and uniform designs.
+	Savings  []Saving  `json:"savings,omitempty"`
+	Refused  []Refusal `json:"refused"`
+	Warnings []string  `json:"warnings"` // about the run as a whole
 }
 
 // Settings are the parameters that the figures depend on.
@@ -82,31 +83,43 @@ type Definition struct {
 
 // Clip is one recording as measured (after preparation).
 type Clip struct {
-	File           string   `json:"file"`
-	Name           string   `json:"name"` // folder under audio/, unique, safe
-	SHA256         string   `json:"sha256"`
-	Format         string   `json:"format"` // in words: "WAV, PCM 16-bit"
-	RateHz         int      `json:"rate_hz"`
-	Channels       int      `json:"channels"`
-	Samples        int64    `json:"samples"` // per channel
-	Seconds        float64  `json:"seconds"`
-	LevelDBov      Num      `json:"level_dbov"`
-	ActiveDBov     Num      `json:"active_level_dbov"`
-	Activity       Num      `json:"activity"`
-	PeakDB         Num      `json:"peak_db"`
-	CrestDB        Num      `json:"crest_db"`
-	DC             Num      `json:"dc"`
-	LSB            float64  `json:"lsb"`
-	EffectiveBits  int      `json:"effective_bits"`
-	NoiseDBov      Num      `json:"noise_dbov"` // level of the frames out of range
-	ZeroShare      Num      `json:"zero_share"`
-	Frames         int64    `json:"frames"` // whole frames, all channels
-	FramesInRange  int64    `json:"frames_in_range"`
-	Preparation    []string `json:"preparation"`
-	Fits           []Fit    `json:"fits"`
-	Warnings       []string `json:"warnings"`
-	Talker         string   `json:"talker,omitempty"`
-	OptimalTableDB Num      `json:"best_mirror_snr_db"` // reserved for the design loss
+	File           string    `json:"file"`
+	Name           string    `json:"name"` // folder under audio/, unique, safe
+	SHA256         string    `json:"sha256"`
+	Format         string    `json:"format"` // in words: "WAV, PCM 16-bit"
+	RateHz         int       `json:"rate_hz"`
+	Channels       int       `json:"channels"`
+	Samples        int64     `json:"samples"` // per channel
+	Seconds        float64   `json:"seconds"`
+	LevelDBov      Num       `json:"level_dbov"`
+	ActiveDBov     Num       `json:"active_level_dbov"`
+	Activity       Num       `json:"activity"`
+	PeakDB         Num       `json:"peak_db"`
+	CrestDB        Num       `json:"crest_db"`
+	DC             Num       `json:"dc"`
+	LSB            float64   `json:"lsb"`
+	EffectiveBits  int       `json:"effective_bits"`
+	NoiseDBov      Num       `json:"noise_dbov"` // level of the frames out of range
+	ZeroShare      Num       `json:"zero_share"`
+	Frames         int64     `json:"frames"` // whole frames, all channels
+	FramesInRange  int64     `json:"frames_in_range"`
+	Preparation    []string  `json:"preparation"`
+	Fits           []Fit     `json:"fits"`
+	Findings       []Finding `json:"findings"`
+	Warnings       []string  `json:"warnings"` // reading notes, then a sentence per finding
+	Talker         string    `json:"talker,omitempty"`
+	OptimalTableDB Num       `json:"best_mirror_snr_db"` // reserved for the design loss
+}
+
+// Finding is something wrong with one channel of a recording.
+type Finding struct {
+	Channel  int     `json:"channel"` // from 1
+	Kind     string  `json:"kind"`
+	Severity string  `json:"severity"` // note, warning, severe
+	Sentence string  `json:"sentence"`
+	Advice   string  `json:"advice"`
+	Value    float64 `json:"value"`
+	Unit     string  `json:"unit"`
 }
 
 // Fit is one amplitude model fitted to one clip.

@@ -1,0 +1,121 @@
+package bench
+
+import (
+	"fewbits/codec"
+	"fewbits/measure"
+)
+
+// coder codes chunks with all designs of a comparison and measures the frames.
+type coder struct {
+	designs []made
+	lookups []measure.Lookup
+	kernel  *measure.Kernel   // for 16-bit samples
+	search  []*measure.Search // for all others
+}
+
+func newCoder(designs []made, words bool) *coder {
+	c := &coder{designs: designs}
+	for _, d := range designs {
+		if words {
+			c.lookups = append(c.lookups, measure.Lookup(d.grid))
+		} else {
+			s := d.stair
+			c.search = append(c.search, measure.NewSearch(s.Thresholds, s.Values, s.Lo, s.Hi, s.Tie == codec.TieOut))
+		}
+	}
+	if words {
+		c.kernel = measure.NewKernel(c.lookups)
+	}
+	return c
+}
+
+// blocksPerClip is how many stretches a clip is cut into where intervals must
+// come from blocks, because there are few clips.
+const blocksPerClip = 16
+
+// coded is what coding a chunk gave: for each block that it touches a tally a
+// design, and the energies of each frame of each channel.
+type coded struct {
+	first  int // block of blocks[0]
+	blocks [][]measure.Tally
+	frames int       // per channel
+	signal []float64 // channel-major: [channel*frames+frame]
+	errs   []float64 // [(channel*frames+frame)*designs+design]
+}
+
+// block is the block of the frame that starts at a sample.
+func (s *survey) block(start int64) int {
+	whole := s.clip.Samples / int64(s.frame)
+	return int(min(blocksPerClip-1, start/int64(s.frame)*blocksPerClip/max(1, whole)))
+}
+
+// code measures a chunk. Global figures of 16-bit samples are left to the
+// histogram.
+func (c *coder) code(s *survey, p planes, at chunk, set Settings) coded {
+	d, channels := len(c.designs), s.clip.Channels
+	n := p.samples() / s.frame
+	out := coded{
+		first: s.block(at.start), frames: n,
+		signal: make([]float64, channels*n), errs: make([]float64, channels*n*d),
+	}
+	for range s.block(at.start+at.samples-1) - out.first + 1 {
+		out.blocks = append(out.blocks, make([]measure.Tally, d))
+	}
+	for ch := range channels {
+		signal, errs := out.signal[ch*n:(ch+1)*n], out.errs[ch*n*d:(ch+1)*n*d]
+		if p.words != nil {
+			c.kernel.Frames(p.words[ch], s.frame, signal, errs)
+		} else {
+			c.frames(s, p.reals[ch], ch, out.blocks[0], signal, errs)
+		}
+		c.count(s, ch, at, set, &out, signal, errs)
+	}
+	return out
+}
+
+// count enters the frames of a channel into the segmental measures.
+func (c *coder) count(s *survey, ch int, at chunk, set Settings, out *coded, signal, errs []float64) {
+	lim, floor, d := set.limits(), measure.FloorOf(s.frame, s.clip.LSB), len(c.designs)
+	for f, sig := range signal {
+		tallies := out.blocks[s.block(at.start+int64(f*s.frame))-out.first]
+		frame := measure.Frame{
+			Samples: s.frame, Signal: sig, Floor: floor,
+			InRange: measure.InRange(sig, s.frame, s.inRange[ch]),
+		}
+		for i := range tallies {
+			frame.Error = errs[f*d+i]
+			measure.AddFrame(&tallies[i], frame, lim)
+		}
+	}
+}
+
+// frames is the general path: every sample of every design is searched. Its
+// global figures go to the chunk's first block.
+func (c *coder) frames(s *survey, x []float64, ch int, tallies []measure.Tally, signal, errs []float64) {
+	n, d := s.frame, len(c.search)
+	for f := range signal {
+		part := x[f*n : (f+1)*n]
+		for i, search := range c.search {
+			e := search.Add(&tallies[i], part)
+			signal[f], errs[f*d+i] = e.Signal, e.Error
+			if measure.InRange(e.Signal, n, s.inRange[ch]) {
+				tallies[i].AddInRange(e)
+			} else {
+				tallies[i].AddQuiet(e, int64(n))
+			}
+		}
+	}
+	for i, search := range c.search {
+		search.Add(&tallies[i], x[len(signal)*n:])
+	}
+}
+
+// whole adds what the histograms of a 16-bit clip say about each design.
+func (c *coder) whole(s *survey, tallies []measure.Tally) {
+	for i, l := range c.lookups {
+		t := measure.TallyHistogram(s.hist, l)
+		t.AddInRange(measure.EnergiesOf(s.in, l))
+		t.AddQuiet(measure.EnergiesOf(s.out, l), s.quietLen)
+		tallies[i].Merge(&t)
+	}
+}

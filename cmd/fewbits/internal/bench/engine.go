@@ -1,0 +1,90 @@
+package bench
+
+import (
+	"context"
+	"math"
+	"slices"
+	"sync"
+
+	"fewbits/codec/family"
+	"fewbits/measure"
+)
+
+// engine carries what all passes of a run share.
+type engine struct {
+	ctx    context.Context
+	plan   Plan
+	tokens chan struct{} // one per worker: whoever works on samples holds one
+	hists  sync.Pool
+
+	mu   sync.Mutex
+	step Step
+}
+
+func newEngine(ctx context.Context, plan Plan) *engine {
+	plan.Workers = max(1, plan.Workers)
+	e := &engine{ctx: ctx, plan: plan, tokens: make(chan struct{}, plan.Workers)}
+	e.hists.New = func() any { return new(measure.Histogram) }
+	return e
+}
+
+// begin starts a pass over so many samples.
+func (e *engine) begin(pass string, total int64) {
+	e.mu.Lock()
+	defer e.mu.Unlock()
+	e.step = Step{Pass: pass, Total: total}
+	e.tell()
+}
+
+// advance reports n more samples done.
+func (e *engine) advance(n int64) {
+	e.mu.Lock()
+	defer e.mu.Unlock()
+	e.step.Done += n
+	e.tell()
+}
+
+func (e *engine) tell() {
+	if e.plan.Progress != nil {
+		e.plan.Progress(e.step)
+	}
+}
+
+// chunks walks a recording: work runs on many chunks at once, take in order.
+func chunks[T any](e *engine, s *survey, work func(c chunk) (T, error), take func(c chunk, t T) error) error {
+	cut := chunksOf(s.clip.Samples, s.frame)
+	return inOrder(e.ctx, len(cut), e.plan.Workers,
+		func(i int) (T, error) {
+			e.tokens <- struct{}{}
+			defer func() { <-e.tokens }()
+			return work(cut[i])
+		},
+		func(i int, t T) error {
+			e.advance(cut[i].samples * int64(s.clip.Channels))
+			return take(cut[i], t)
+		})
+}
+
+// histogram borrows an empty histogram; giveBack returns it.
+func (e *engine) histogram() *measure.Histogram {
+	h := e.hists.Get().(*measure.Histogram)
+	h.Reset()
+	return h
+}
+
+func (e *engine) giveBack(h *measure.Histogram) { e.hists.Put(h) }
+
+// frameSamples is the frame length in samples, rounded by the definition.
+func frameSamples(rate int, seconds float64) int {
+	return max(1, int(math.Floor(float64(rate)*seconds+0.5)))
+}
+
+// limits are the settings as measure wants them.
+func (s Settings) limits() measure.Limits {
+	return measure.Limits{Lower: s.LimitsDB[0], Upper: s.LimitsDB[1], OpenUpper: s.OpenLimitsDB[1]}
+}
+
+// needs reports whether any design must know that much of the recordings.
+func (e *engine) needs(n family.Need) bool {
+	return slices.ContainsFunc(e.plan.Specs, func(s family.Spec) bool { return s.Need() >= n })
+}

@@ -1,0 +1,224 @@
+package bench
+
+import (
+	"math"
+	"sync"
+
+	"fewbits/codec/family"
+	"fewbits/measure"
+	"fewbits/samples"
+)
+
+// survey is what is known of one recording before it is coded.
+type survey struct {
+	rec      *samples.Recording
+	clip     Clip
+	frame    int // samples
+	levels   measure.Levels
+	active   float64   // samples counted as active, all channels; 0 where undefined
+	inRange  []float64 // per channel: mean square that a frame must exceed
+	activeSq []float64 // per channel: mean square at the active level
+	hist     *measure.Histogram
+	in, out  *measure.Histogram // samples of whole frames in range, and not
+	kept     [][]int16          // frames kept for designs that need them
+	quietSq  float64
+	quietLen int64
+}
+
+// stretch is what a chunk adds to a survey.
+type stretch struct {
+	levels []measure.Levels
+	active []*measure.Activity
+}
+
+// survey reads a recording twice: levels and active speech level, then which
+// frames are in range.
+func (e *engine) survey(rec *samples.Recording, file string) (*survey, error) {
+	info := rec.Info()
+	s := &survey{rec: rec, frame: frameSamples(info.Rate, e.plan.FrameSeconds), hist: new(measure.Histogram)}
+	s.clip = Clip{
+		File: file, Format: info.Format(), RateHz: info.Rate, Channels: info.Channels, Samples: info.Frames,
+		Seconds: float64(info.Frames) / float64(info.Rate), Warnings: append([]string{}, info.Warnings...),
+		Preparation: []string{}, Fits: []Fit{},
+	}
+	per, times, err := e.readLevels(s)
+	if err != nil {
+		return nil, err
+	}
+	e.settleLevels(s, per, times)
+	if err := e.readRanges(s); err != nil {
+		return nil, err
+	}
+	return s, e.scanFaults(s, per)
+}
+
+// readLevels is the first pass over one recording.
+func (e *engine) readLevels(s *survey) ([]measure.Levels, []*measure.Activity, error) {
+	var mu sync.Mutex
+	rate := float64(s.clip.RateHz)
+	per := make([]measure.Levels, s.clip.Channels)
+	times := make([]*measure.Activity, s.clip.Channels)
+	for c := range times {
+		times[c] = measure.NewActivity(rate)
+	}
+	work := func(c chunk) (stretch, error) {
+		warm := min(c.start, int64(measure.WarmUpSeconds*rate))
+		p, err := read(s.rec, c.start-warm, c.samples+warm)
+		if err != nil {
+			return stretch{}, err
+		}
+		h := e.histogram()
+		defer e.giveBack(h)
+		t := p.survey(int(warm), rate, h)
+		mu.Lock()
+		defer mu.Unlock()
+		s.hist.Merge(h)
+		return t, nil
+	}
+	err := chunks(e, s, work, func(_ chunk, t stretch) error {
+		for c := range per {
+			per[c].Merge(&t.levels[c])
+			times[c].Merge(t.active[c])
+		}
+		return nil
+	})
+	return per, times, err
+}
+
+// survey sums a chunk whose first warm samples belong to the chunk before.
+func (p planes) survey(warm int, rate float64, h *measure.Histogram) stretch {
+	n := max(len(p.words), len(p.reals))
+	t := stretch{levels: make([]measure.Levels, n), active: make([]*measure.Activity, n)}
+	for c := range n {
+		a := measure.NewActivity(rate)
+		if p.words != nil {
+			w := p.words[c]
+			a.WarmWords(w[:warm])
+			a.AddWords(w[warm:])
+			t.levels[c].AddWords(w[warm:])
+			h.AddWords(w[warm:])
+		} else {
+			x := p.reals[c]
+			a.Warm(x[:warm])
+			a.Add(x[warm:])
+			t.levels[c].Add(x[warm:])
+			h.Add(x[warm:])
+		}
+		t.active[c] = a
+	}
+	return t
+}
+
+// settleLevels turns the sums into the clip's figures and the channels' rules
+// for what is in range. A clip's figures pool its channels.
+func (e *engine) settleLevels(s *survey, per []measure.Levels, times []*measure.Activity) {
+	var activeEnergy float64
+	for c := range per {
+		s.levels.Merge(&per[c])
+		level, activity := times[c].Result()
+		s.activeSq = append(s.activeSq, math.Pow(10, level/10))
+		s.inRange = append(s.inRange, measure.RangeThreshold(level, e.plan.RangeDB))
+		if !math.IsNaN(level) {
+			s.active += activity * float64(per[c].Samples)
+			activeEnergy += per[c].Energy()
+		}
+	}
+	l, c := &s.levels, &s.clip
+	c.LevelDBov, c.PeakDB, c.CrestDB = Num(l.LevelDBov()), Num(l.PeakDB()), Num(l.CrestDB())
+	c.DC, c.LSB, c.EffectiveBits = Num(l.DC()), l.LSB(), l.EffectiveBits()
+	c.ZeroShare = Num(l.ZeroShare())
+	c.ActiveDBov, c.Activity = Num(math.NaN()), Num(math.NaN())
+	if s.active > 0 {
+		c.ActiveDBov = Num(measure.DB(activeEnergy / s.active))
+		c.Activity = Num(s.active / float64(l.Samples))
+	}
+}
+
+// ranged is what a chunk of the second pass found.
+type ranged struct {
+	frames, in int64
+	quietSq    float64
+	quietLen   int64
+	kept       []keptFrame
+}
+
+// readRanges is the second pass: which frames are in range.
+func (e *engine) readRanges(s *survey) error {
+	s.in, s.out = new(measure.Histogram), new(measure.Histogram)
+	var mu sync.Mutex
+	var keep *keeper
+	if e.needs(family.FramedData) {
+		keep = &keeper{file: s.clip.File}
+	}
+	work := func(c chunk) (ranged, error) {
+		p, err := read(s.rec, c.start, c.samples)
+		if err != nil {
+			return ranged{}, err
+		}
+		in, out := e.histogram(), e.histogram()
+		defer e.giveBack(in)
+		defer e.giveBack(out)
+		r := p.ranges(s, c, in, out, keep)
+		mu.Lock()
+		defer mu.Unlock()
+		s.in.Merge(in)
+		s.out.Merge(out)
+		return r, nil
+	}
+	err := chunks(e, s, work, func(_ chunk, r ranged) error {
+		s.clip.Frames += r.frames
+		s.clip.FramesInRange += r.in
+		s.quietSq += r.quietSq
+		s.quietLen += r.quietLen
+		keep.take(r.kept)
+		return nil
+	})
+	s.kept = keep.words()
+	s.clip.NoiseDBov = Num(math.NaN())
+	if s.quietLen > 0 {
+		s.clip.NoiseDBov = Num(measure.DB(s.quietSq / float64(s.quietLen)))
+	}
+	return err
+}
+
+// ranges sorts a chunk's whole frames.
+func (p planes) ranges(s *survey, c chunk, in, out *measure.Histogram, keep *keeper) (r ranged) {
+	for ch := range s.clip.Channels {
+		for f := range int(c.samples) / s.frame {
+			a, b := f*s.frame, (f+1)*s.frame
+			r.frames++
+			sq := p.energy(ch, a, b)
+			to := out
+			if measure.InRange(sq, s.frame, s.inRange[ch]) {
+				to = in
+				r.in++
+				r.kept = keep.consider(r.kept, ch, c.start+int64(a), p, a, b)
+			} else {
+				r.quietSq += sq
+				r.quietLen += int64(s.frame)
+			}
+			if p.words != nil {
+				to.AddWords(p.words[ch][a:b])
+			} else {
+				to.Add(p.reals[ch][a:b])
+			}
+		}
+	}
+	return r
+}
+
+// energy is sum x^2 of samples a to b of a channel.
+func (p planes) energy(ch, a, b int) float64 {
+	if p.words != nil {
+		var sq int64
+		for _, w := range p.words[ch][a:b] {
+			sq += int64(w) * int64(w)
+		}
+		return float64(sq) / (1 << 30)
+	}
+	var sq float64
+	for _, x := range p.reals[ch][a:b] {
+		sq += float64(x * x)
+	}
+	return sq
+}

@@ -1,0 +1,67 @@
+package main
+
+import (
+	"io"
+	"os"
+
+	"github.com/spf13/cobra"
+	"golang.org/x/term"
+
+	"fewbits/cmd/fewbits/internal/bench"
+	"fewbits/cmd/fewbits/internal/folder"
+	"fewbits/cmd/fewbits/internal/report"
+)
+
+// writeOutputs fills the output folder with everything but the audio, which
+// is there already.
+func writeOutputs(out *folder.Folder, r *bench.Results, t *bench.Traces, pictures string) error {
+	for name, write := range map[string]func(io.Writer) error{
+		"results.json": func(w io.Writer) error { return report.JSON(w, r) },
+		"traces.json":  func(w io.Writer) error { return report.TracesJSON(w, t) },
+		"summary.csv":  func(w io.Writer) error { return report.Summary(w, r) },
+	} {
+		if err := writeFile(out, name, write); err != nil {
+			return err
+		}
+	}
+	return nil
+}
+
+func writeFile(out *folder.Folder, name string, write func(io.Writer) error) error {
+	path, err := out.Path(name)
+	if err != nil {
+		return err
+	}
+	f, err := os.Create(path)
+	if err != nil {
+		return err
+	}
+	defer f.Close()
+	if err := write(f); err != nil {
+		return err
+	}
+	return f.Close()
+}
+
+// printResults prints the pooled table in the form asked for.
+func printResults(c *cobra.Command, r *bench.Results, format string) error {
+	w := c.OutOrStdout()
+	switch format {
+	case "json":
+		return report.JSON(w, r)
+	case "csv":
+		return report.Summary(w, r)
+	}
+	width, color := terminal(w)
+	return report.Terminal(w, r, width, color)
+}
+
+// terminal tells the width and whether colour helps; 0 and no off a terminal.
+func terminal(w io.Writer) (width int, color bool) {
+	f, ok := w.(*os.File)
+	if !ok || !term.IsTerminal(int(f.Fd())) {
+		return 0, false
+	}
+	width, _, _ = term.GetSize(int(f.Fd()))
+	return width, os.Getenv("NO_COLOR") == ""
+}
