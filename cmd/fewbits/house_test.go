@@ -16,7 +16,7 @@ var house = map[string][]string{
 	"samples":         {"samples/wave", "samples/flac"},
 	"samples/flac":    {"samples/wave"},
 	"samples/prepare": {"samples"},
-	"samples/demo":    {"samples/wave"},
+	"samples/demo":    {"samples"},
 	"measure/model":   {"measure"},
 	"measure/fault":   {"measure"},
 	"codec/design":    {"codec"},

@@ -7,6 +7,7 @@ import (
 	"strings"
 
 	"fewbits/samples"
+	"fewbits/samples/prepare"
 )
 
 // openAll finds, opens, prepares and surveys recordings. Those that cannot be
@@ -59,7 +60,7 @@ func (e *engine) openOne(file string) (*survey, error) {
 	if err != nil {
 		return nil, err
 	}
-	rec, did, err := prepApply(rec, e.plan.Steps)
+	rec, did, err := prepare.Apply(rec, e.plan.Steps)
 	if err != nil {
 		return nil, err
 	}
@@ -86,7 +87,7 @@ func (e *engine) levelled(s *survey, did []string) (*survey, []string, error) {
 		return nil, nil, fmt.Errorf("--level: no active speech level, so no gain: leave the recording out or use --level as-is")
 	}
 	gain := e.plan.Level - float64(s.clip.ActiveDBov)
-	rec, more, err := prepApply(s.rec, prepPlan{GainDB: gain})
+	rec, more, err := prepare.Apply(s.rec, prepare.Plan{GainDB: gain})
 	if err != nil {
 		return nil, nil, err
 	}

@@ -4,6 +4,7 @@ import (
 	"regexp"
 
 	"fewbits/codec/family"
+	"fewbits/samples/prepare"
 )
 
 // Plan is what to run.
@@ -14,7 +15,7 @@ type Plan struct {
 	Specs   []family.Spec // with their bits settled
 	Command []string      // as typed, for the record
 
-	Steps  prepPlan       // preparation, but for the level
+	Steps  prepare.Plan   // preparation, but for the level
 	Level  float64        // active speech level to bring each clip to, dBov; NaN: as is
 	Talker *regexp.Regexp // finds the talker in a path; nil: every clip its own
 
