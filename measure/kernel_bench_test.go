@@ -140,26 +140,26 @@ func BenchmarkLevelsWords(b *testing.B) {
 
 func BenchmarkSearch(b *testing.B) {
 	x := toFloat(speechLike(480000, 7))
-	l := uniformLookup(256, 1)
-	t := make([]float64, 255)
-	for k := range t {
-		t[k] = (l.Values[k] + l.Values[k+1]) / 2
+	mu, muValues := g711Cells(true)
+	fine, fineValues := smoothCells(12, expandMu)
+	for name, s := range map[string]*Search{
+		"g711": NewSearch(mu, muValues, -1, 1, true), "12-bit-mu-law": NewSearch(fine, fineValues, -1, 1, true),
+	} {
+		b.Run("add/"+name, func(b *testing.B) {
+			var tally Tally
+			for b.Loop() {
+				s.Add(&tally, x)
+			}
+			perSecond(b, len(x), "samples/s")
+		})
+		b.Run("indices/"+name, func(b *testing.B) {
+			dst := make([]uint16, len(x))
+			for b.Loop() {
+				s.Indices(dst, x)
+			}
+			perSecond(b, len(x), "samples/s")
+		})
 	}
-	s := NewSearch(t, l.Values, -1, 1, true)
-	b.Run("add", func(b *testing.B) {
-		var tally Tally
-		for b.Loop() {
-			s.Add(&tally, x)
-		}
-		perSecond(b, len(x), "samples/s")
-	})
-	b.Run("indices", func(b *testing.B) {
-		dst := make([]uint16, len(x))
-		for b.Loop() {
-			s.Indices(dst, x)
-		}
-		perSecond(b, len(x), "samples/s")
-	})
 }
 
 func toFloat(words []int16) []float64 {

@@ -1,6 +1,9 @@
 package measure
 
-import "sort"
+import (
+	"math"
+	"sort"
+)
 
 // Search finds the cell of any sample, 24-bit or float, for one quantizer. A
 // table of evenly spaced buckets leads to within a few cells, comparison with
@@ -11,10 +14,16 @@ type Search struct {
 	lo, hi     float64
 	tieOut     bool
 
-	first []uint16 // lowest cell of each bucket
-	zero  float64  // where the buckets begin
-	scale float64  // buckets per unit
+	bounded []float64 // thresholds and +Inf
+	first   []uint16  // lowest cell of each bucket
+	zero    float64   // where the buckets begin
+	scale   float64   // buckets per unit
+	last    float64   // number of the last bucket
+	single  bool      // no bucket holds more than one threshold
 }
+
+// maxBuckets bounds a bucket table to 256 KB.
+const maxBuckets = 1 << 17
 
 // NewSearch takes N-1 ascending finite thresholds, N values (at most 65,536)
 // and the bounds of the range without overload, full scale = 1.0. A value on a
@@ -25,35 +34,58 @@ func NewSearch(thresholds, values []float64, lo, hi float64, tieOut bool) *Searc
 		panic("measure: NewSearch with thresholds and values that do not fit")
 	}
 	s := &Search{thresholds: thresholds, values: values, lo: lo, hi: hi, tieOut: tieOut}
+	s.bounded = append(append(make([]float64, 0, len(values)), thresholds...), math.Inf(1))
+	s.first = make([]uint16, buckets(thresholds))
+	s.last = float64(len(s.first) - 1)
+	if n := len(thresholds); n > 1 {
+		s.zero = thresholds[0]
+		s.scale = s.last / (thresholds[n-1] - s.zero)
+	}
+	s.fill()
+	return s
+}
+
+// buckets is enough for one threshold each where that is affordable: companders
+// crowd them near zero.
+func buckets(thresholds []float64) int {
 	n := len(thresholds)
-	s.first = make([]uint16, min(1<<17, max(64, 8*n)))
-	if n == 0 {
-		return s
+	if n < 2 {
+		return 1
 	}
-	s.zero = thresholds[0]
-	if span := thresholds[n-1] - s.zero; span > 0 {
-		s.scale = float64(len(s.first)-1) / span
+	gap := math.Inf(1)
+	for k := 1; k < n; k++ {
+		gap = min(gap, thresholds[k]-thresholds[k-1])
 	}
-	b := 0
-	for k, t := range thresholds {
-		for ; b <= s.bucket(t); b++ {
+	want := 2 * (thresholds[n-1] - thresholds[0]) / gap
+	return int(max(float64(2*n), min(want, maxBuckets)))
+}
+
+// fill writes the lowest cell of each bucket: the number of thresholds in
+// earlier ones.
+func (s *Search) fill() {
+	s.single = true
+	b, before := 0, -1
+	for k, t := range s.thresholds {
+		at := s.bucket(t)
+		s.single = s.single && at != before
+		before = at
+		for ; b <= at; b++ {
 			s.first[b] = uint16(k)
 		}
 	}
 	for ; b < len(s.first); b++ {
-		s.first[b] = uint16(n)
+		s.first[b] = uint16(len(s.thresholds))
 	}
-	return s
 }
 
 // bucket never falls as x rises, whatever the rounding: that makes first exact.
 func (s *Search) bucket(x float64) int {
 	at := (x - s.zero) * s.scale
-	switch last := len(s.first) - 1; {
-	case !(at > 0):
+	if !(at > 0) {
 		return 0
-	case at >= float64(last):
-		return last
+	}
+	if at >= s.last {
+		return len(s.first) - 1
 	}
 	return int(at)
 }
@@ -61,25 +93,35 @@ func (s *Search) bucket(x float64) int {
 // Cells is the number of cells N.
 func (s *Search) Cells() int { return len(s.values) }
 
-// Index returns the cell of x, 0 to N-1.
+// Index returns the cell of x, 0 to N-1; x is not NaN.
 func (s *Search) Index(x float64) int {
 	b := s.bucket(x)
-	k, end := int(s.first[b]), len(s.thresholds)
-	if b+1 < len(s.first) {
-		end = min(end, int(s.first[b+1]))
+	k := int(s.first[b])
+	if !s.single {
+		k = s.within(b, k, x)
+	} else if s.bounded[k] <= x {
+		k++
 	}
-	t := s.thresholds
+	return s.settleTie(k, x)
+}
+
+// within finds the cell in a bucket of several thresholds; k is its lowest.
+func (s *Search) within(b, k int, x float64) int {
+	end := len(s.thresholds)
+	if b+1 < len(s.first) {
+		end = int(s.first[b+1])
+	}
 	for end-k > 4 {
-		if m := (k + end) / 2; t[m] <= x {
+		if m := (k + end) / 2; s.thresholds[m] <= x {
 			k = m + 1
 		} else {
 			end = m
 		}
 	}
-	for k < end && t[k] <= x {
+	for k < end && s.thresholds[k] <= x {
 		k++
 	}
-	return s.settleTie(k, x)
+	return k
 }
 
 // Quantize returns the reconstruction value of x.

@@ -32,7 +32,7 @@ func (s *Search) walk(k int, x float64) int {
 
 // settleTie corrects cell k, found with ties upwards, for the rule of s.
 func (s *Search) settleTie(k int, x float64) int {
-	if s.tieOut && x < 0 && k > 0 && s.thresholds[k-1] == x {
+	if k > 0 && s.thresholds[k-1] == x && x < 0 && s.tieOut {
 		return k - 1
 	}
 	return k
