@@ -11,7 +11,7 @@ trap 'rm -rf "$work"' EXIT
 # clip NAME RATE VOICE SPEED PEAK_DB NOISE_DB TEXT
 clip() {
 	espeak-ng -v "$3" -s "$4" -w "$work/said.wav" "$7"
-	sox -R "$work/said.wav" -r "$2" "$work/speech.wav" highpass 120 norm "$5" pad 0.3 0.3
+	sox -R "$work/said.wav" -r "$2" "$work/speech.wav" highpass 120 norm "$5" pad 0.28 0.28
 	long=$(soxi -D "$work/speech.wav")
 	# A diesel idling: brown noise and the firing rate with two harmonics.
 	sox -R -n -r "$2" "$work/rumble.wav" synth "$long" brownnoise norm "$6"
