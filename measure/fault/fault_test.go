@@ -187,20 +187,21 @@ func TestFineGrid(t *testing.T) {
 
 // However a channel is cut into blocks, the findings are the same.
 func TestBlocksDoNotMatter(t *testing.T) {
-	words := mapped(zeroed(talk(4, 2), 9000, 3000), func(_ int, w float64) float64 { return 6*w + 200 })
+	words := mapped(zeroed(talk(1.6, 2), 9000, 3000), func(_ int, w float64) float64 { return 6*w + 200 })
 	want := findingsOf(words)
+	c := contextOf(amplitudes(words), testRate)
 	if len(want) < 3 {
 		t.Fatalf("the signal shows only %d faults", len(want))
 	}
 	rapid.Check(t, func(rt *rapid.T) {
 		s := NewScan(testRate)
 		for rest := words; len(rest) > 0; {
-			n := rapid.IntRange(1, 20000).Draw(rt, "block")
+			n := rapid.IntRange(1, 8000).Draw(rt, "block")
 			n = min(n, len(rest))
 			s.AddWords(rest[:n])
 			rest = rest[n:]
 		}
-		if got := s.Findings(contextOf(amplitudes(words), testRate)); !reflect.DeepEqual(got, want) {
+		if got := s.Findings(c); !reflect.DeepEqual(got, want) {
 			rt.Fatalf("got %+v, want %+v", got, want)
 		}
 	})
