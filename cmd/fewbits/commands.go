@@ -8,5 +8,6 @@ func commands() []*cobra.Command {
 		demoCommand(),
 		compareCommand(),
 		inspectCommand(),
+		abCommand(),
 	}
 }
