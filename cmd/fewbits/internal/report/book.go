@@ -29,6 +29,8 @@ type book struct {
 	design map[string]*bench.Design // by spec
 	means  map[string]bench.Definition
 	winner map[string]bool // specs that lead at their bit rate
+	line   map[string]int  // series by kin
+	kins   []string        // in order of series
 }
 
 func open(r *bench.Results) *book {
@@ -46,8 +48,11 @@ func open(r *bench.Results) *book {
 		b.means[d.Name] = d
 	}
 	for _, v := range r.Verdicts {
-		b.winner[v.Winners[r.Leading]] = true
+		if w := v.Winners[r.Leading]; w != "" {
+			b.winner[w] = true
+		}
 	}
+	b.numberLines()
 	return b
 }
 

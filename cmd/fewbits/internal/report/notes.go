@@ -17,8 +17,8 @@ func notes(b *book, left []string) (out []string) {
 	if len(b.winner) > 0 {
 		out = append(out, "* best at its number of bits by "+b.Leading+".")
 	}
-	if b.IntervalsBy != "" {
-		out = append(out, "95 %: interval of the mean over clips; "+b.IntervalsBy+".")
+	if b.IntervalMethod != "" {
+		out = append(out, "95 %: interval of the mean over clips; "+b.IntervalMethod+".")
 	}
 	if lead := b.means["lead"].Means; lead != "" {
 		out = append(out, "lead: "+lead+".")
