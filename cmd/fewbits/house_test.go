@@ -25,7 +25,7 @@ var house = map[string][]string{
 	"cmd/fewbits/internal/bench": {
 		"samples", "samples/prepare", "measure", "measure/model", "measure/fault", "codec", "codec/design", "codec/family",
 	},
-	"cmd/fewbits/internal/report":    {"cmd/fewbits/internal/bench", "samples"},
+	"cmd/fewbits/internal/report":    {"cmd/fewbits/internal/bench", "cmd/fewbits/internal/report/drawing", "samples"},
 	"cmd/fewbits/internal/listening": {"cmd/fewbits/internal/bench", "samples"},
 }
 
