@@ -7,6 +7,7 @@ func commands() []*cobra.Command {
 	return []*cobra.Command{
 		demoCommand(),
 		compareCommand(),
+		designCommand(),
 		inspectCommand(),
 		abCommand(),
 	}

@@ -70,6 +70,9 @@ func (f *runFlags) registerMeasuring(c *cobra.Command) {
 	f.format = choose(c, "format", "how to print the table", "table", "csv", "json")
 }
 
+// defaults are the settings of commands that take few of the flags.
+func (f *runFlags) defaults() { f.registerMeasuring(&cobra.Command{}) }
+
 // plan checks every flag and turns them into a bench.Plan.
 func (f *runFlags) plan(inputs []string) (bench.Plan, error) {
 	p := bench.Plan{Inputs: inputs, Train: f.train, Audio: !f.noAudio, FramesCSV: f.framesCSV, Command: f.command}
