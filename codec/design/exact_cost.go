@@ -46,8 +46,7 @@ func newWordSums(h Histogram, pinned bool) *wordSums {
 	if pinned {
 		origin = 0
 	}
-	span, total := (h.Values[len(h.Values)-1]-origin)/ux, h.Total()/uw
-	if !(span < 1<<31 && total < 1<<53 && total*math.Max(1, span)*math.Max(1, span) < 1<<62) {
+	if !fitsWords(h, origin, ux, uw) {
 		return nil
 	}
 	c := &wordSums{at: make([]wordSum, len(h.Values)+1), pinned: pinned, unit: ux * ux * uw}
@@ -62,6 +61,19 @@ func newWordSums(h Histogram, pinned bool) *wordSums {
 	}
 	c.at[len(h.Values)] = sum
 	return c
+}
+
+// fitsWords reports whether all sums are below 2^62: the second moment about
+// the origin bounds that of every cell about its own first value.
+func fitsWords(h Histogram, origin, ux, uw float64) bool {
+	var total, moment float64
+	for i, x := range h.Values {
+		d, w := (x-origin)/ux, h.Weights[i]/uw
+		total += w
+		moment += d * d * w
+	}
+	reach := (h.Values[len(h.Values)-1] - origin) / ux
+	return total < 1<<53 && reach < 1<<53 && moment < 1<<62
 }
 
 // binaryUnit returns the largest power of two that all v are multiples of.
@@ -131,7 +143,10 @@ func (c *realSums) cost(i, j int) float64 {
 	s := c.s[j].add(c.s[i].neg())
 	first := s.add(w.times(-c.x[i]))
 	second := q.add(s.add(first).times(-c.x[i]))
-	return math.Max(0, second.hi-float64(first.hi*first.hi)/w.hi)
+	if e := second.hi - float64(first.hi*first.hi)/w.hi; e > 0 {
+		return e
+	}
+	return 0
 }
 
 func newRealSums(h Histogram, pinned bool) *realSums {
@@ -140,8 +155,6 @@ func newRealSums(h Histogram, pinned bool) *realSums {
 		w: make([]pair, n+1), s: make([]pair, n+1), q: make([]pair, n+1),
 		x: make([]float64, n+1), pinned: pinned,
 	}
-	// One common shift to the middle keeps the moments small; it is exact in
-	// pairs only up to rounding of x, so it is left out where that rounds.
 	for i, x := range h.Values {
 		w := h.Weights[i]
 		wx := twoProd(w, x)

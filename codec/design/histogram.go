@@ -51,7 +51,7 @@ func (h Histogram) Fold() Histogram {
 }
 
 func (h *Histogram) push(x, w float64) {
-	h.Values = append(h.Values, math.Abs(x)) // -0 becomes 0
+	h.Values = append(h.Values, x+0) // -0 becomes 0
 	h.Weights = append(h.Weights, w)
 }
 

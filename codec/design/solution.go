@@ -34,6 +34,9 @@ type Solution struct {
 	// Entropy is the first-order entropy of the indices under the density or
 	// the data, in bits.
 	Entropy float64
+	// Aim is the figure reached where the aim is not the MSE (segmental aims:
+	// mean frame SNR in dB); 0 otherwise.
+	Aim float64
 	// Rounds counts iterations; Residual is max |value - centroid| / cell
 	// width (0 where exact; the outermost, endless cells use the width up to
 	// the mirrored threshold, 2y - t).
