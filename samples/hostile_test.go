@@ -259,7 +259,7 @@ func hostileFLAC(t *testing.T) []row {
 		{name: "FLAC without a checksum", file: edit(sumAt, make([]byte, 16)...), frames: 10000, format: f, first: value, warn: []string{"carries no checksum"}},
 		{name: "FLAC of another checksum", file: edit(sumAt, 1, 2, 3), err: "does not match the file's checksum: the file is damaged; get a good copy"},
 		{name: "FLAC that claims 2^32 samples", file: edit(countAt, 0xFF, 0xFF, 0xFF, 0xFF), frames: 10000, format: f, first: value, warn: []string{"the file ends after 10000 of 4294967295 samples"}},
-		{name: "FLAC of more samples than it says", file: edit(countAt, 0, 0, 0x20, 0x01), err: "10000 samples where the header says 8193"},
+		{name: "FLAC of more samples than it says", file: edit(countAt, 0, 0, 0x20, 0x01), err: "the blocks hold more than the 8193 samples"},
 		{name: "FLAC of 0 Hz", file: edit(rateAt, 0, 0, good[rateAt+2]&0x0F), err: "no usable stream header"},
 		{name: "FLAC of 1 Hz", file: edit(rateAt, 0, 0, 0x10|good[rateAt+2]&0x0F), err: "the header says 1 Hz"},
 		{name: "FLAC of other channels than its blocks", file: edit(rateAt+2, good[rateAt+2]|0x0E), err: "a block of 1 channels in a stream of 8"},

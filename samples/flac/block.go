@@ -1,6 +1,8 @@
 package flac
 
 import (
+	"fmt"
+
 	"github.com/mewkiz/flac/frame"
 
 	"fewbits/samples/wave"
@@ -9,6 +11,9 @@ import (
 // write sums a decoded block and writes it out.
 func (d *decoder) write(at int64, f *frame.Frame) error {
 	n := int(f.BlockSize)
+	if most := d.info.NSamples; most > 0 && uint64(d.f.Frames)+uint64(n) > most {
+		return d.fault(at, "the blocks hold more than the %d samples that the header says", most)
+	}
 	if err := d.inRange(at, f, n); err != nil {
 		return err
 	}
@@ -20,7 +25,7 @@ func (d *decoder) write(at int64, f *frame.Frame) error {
 		d.packed = interleave(nil, f, n, stored/8, stored-bits)
 	}
 	if d.limit -= int64(len(d.packed)); d.limit < 0 {
-		return &wave.Fault{Offset: at, What: "FLAC: the file unpacks to more than 256 MiB and 1200 times its size",
+		return &wave.Fault{Offset: at, What: fmt.Sprintf("FLAC: the file unpacks to more than %d MiB and %d times its size", base>>20, ratio),
 			Remedy: "convert it to WAV first if it is a recording"}
 	}
 	d.f.Frames += int64(n)
