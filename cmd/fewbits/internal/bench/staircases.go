@@ -6,6 +6,7 @@ import (
 	"fmt"
 	"math"
 
+	"fewbits/codec"
 	"fewbits/codec/design"
 	"fewbits/codec/family"
 	"fewbits/measure/model"
@@ -24,6 +25,10 @@ type Staircase struct {
 	// BoundGapDB is how far the SNR lies below Shannon's lower bound at the
 	// rate log2 N for the same model.
 	BoundGapDB Num `json:"below_shannon_bound_db"`
+	// Stair is the staircase itself; Words the counts of the recordings' 65,536
+	// words, nil without recordings.
+	Stair *codec.Staircase `json:"-"`
+	Words []float64        `json:"-"`
 }
 
 // OffLevel is the SNR at another level than the one designed for.
@@ -36,7 +41,7 @@ type OffLevel struct {
 // there are any, otherwise for a model at the given rms (full scale = 1.0).
 // Designs without a model of their own are judged by the named one.
 func MakeStaircases(ctx context.Context, plan Plan, judge string, rms float64) ([]Staircase, []Refusal, error) {
-	m, who, refused, err := materialFor(ctx, plan, rms)
+	m, words, who, refused, err := materialFor(ctx, plan, rms)
 	if err != nil {
 		return nil, refused, err
 	}
@@ -46,7 +51,7 @@ func MakeStaircases(ctx context.Context, plan Plan, judge string, rms float64) (
 		if err != nil {
 			return nil, refused, fmt.Errorf("design %q: %w", spec.Text, err)
 		}
-		s := Staircase{Design: finish(spec, got, who).Design, Model: got.From}
+		s := Staircase{Design: finish(spec, got, who).Design, Model: got.From, Stair: got.Stair, Words: words}
 		s.Design.Name = spec.Name()
 		d := got.Density
 		if d == nil {
@@ -62,25 +67,30 @@ func MakeStaircases(ctx context.Context, plan Plan, judge string, rms float64) (
 }
 
 // materialFor is what there is to design on.
-func materialFor(ctx context.Context, plan Plan, rms float64) (family.Material, string, []Refusal, error) {
+func materialFor(ctx context.Context, plan Plan, rms float64) (family.Material, []float64, string, []Refusal, error) {
 	if len(plan.Inputs) == 0 {
 		m := family.Material{RMS: rms, ActiveRMS: rms, Density: func(from, scale string) (design.Density, string, error) {
 			d, err := model.OfRMS(from, rms)
 			return d, fmt.Sprintf("%s at %.1f dBov", from, 20*math.Log10(rms)), err
 		}, Frames: func() (*design.Frames, error) { return nil, errors.New("frames need --like RECORDING") }}
-		return m, "no recordings", nil, nil
+		return m, nil, "no recordings", nil, nil
 	}
 	e := newEngine(ctx, plan)
 	surveys, refused, err := e.openAll(plan.Inputs, map[string]bool{})
 	if err != nil {
-		return family.Material{}, "", refused, err
+		return family.Material{}, nil, "", refused, err
 	}
 	defer closeAll(surveys)
 	if len(surveys) == 0 {
-		return family.Material{}, "", refused, noneLeft(refused)
+		return family.Material{}, nil, "", refused, noneLeft(refused)
 	}
-	m, err := newPool(surveys).material()
-	return m, "the recordings of --like", refused, err
+	p := newPool(surveys)
+	m, err := p.material()
+	words := make([]float64, 0, 1<<16)
+	for _, n := range p.hist.Counts() {
+		words = append(words, float64(n))
+	}
+	return m, words, "the recordings of --like", refused, err
 }
 
 // judge fills in what the density says of the staircase.
