@@ -10,6 +10,7 @@ func commands() []*cobra.Command {
 		designCommand(),
 		inspectCommand(),
 		exportCommand(),
+		reportCommand(),
 		abCommand(),
 	}
 }

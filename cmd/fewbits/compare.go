@@ -64,7 +64,7 @@ func runInto(c *cobra.Command, plan bench.Plan, f *runFlags, out *folder.Folder)
 	if err != nil {
 		return err
 	}
-	if err := writeOutputs(out, results, traces, f.pictures.value); err != nil {
+	if err := writeOutputs(out, results, traces, f.pictures.value, plan.Audio); err != nil {
 		return err
 	}
 	if err := out.Commit(); err != nil {

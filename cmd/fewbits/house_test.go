@@ -15,7 +15,7 @@ import (
 var house = map[string][]string{
 	"samples":         {"samples/wave", "samples/flac"},
 	"samples/flac":    {"samples/wave"},
-	"samples/prepare": {"samples"},
+	"samples/prepare": {"samples", "samples/wave"},
 	"samples/demo":    {"samples"},
 	"measure/model":   {"measure"},
 	"measure/fault":   {"measure"},

@@ -3,6 +3,7 @@ package main
 import (
 	"io"
 	"os"
+	"path/filepath"
 
 	"github.com/spf13/cobra"
 	"golang.org/x/term"
@@ -14,17 +15,25 @@ import (
 
 // writeOutputs fills the output folder with everything but the audio, which
 // is there already.
-func writeOutputs(out *folder.Folder, r *bench.Results, t *bench.Traces, pictures string) error {
+func writeOutputs(out *folder.Folder, r *bench.Results, t *bench.Traces, pictures string, audio bool) error {
 	for name, write := range map[string]func(io.Writer) error{
 		"results.json": func(w io.Writer) error { return report.JSON(w, r) },
 		"traces.json":  func(w io.Writer) error { return report.TracesJSON(w, t) },
 		"summary.csv":  func(w io.Writer) error { return report.Summary(w, r) },
+		"report.html":  func(w io.Writer) error { return report.HTML(w, r, t, report.Options{Audio: audio}) },
 	} {
 		if err := writeFile(out, name, write); err != nil {
 			return err
 		}
 	}
-	return nil
+	if pictures == "none" {
+		return nil
+	}
+	place, err := out.Path("pictures", "all")
+	if err != nil {
+		return err
+	}
+	return report.Pictures(filepath.Dir(place), r, t, pictures)
 }
 
 func writeFile(out *folder.Folder, name string, write func(io.Writer) error) error {

@@ -94,7 +94,7 @@ func blockUnits(r *Results, outcomes []*outcome, members []int) (u measure.Units
 }
 
 // traces gathers what pictures need.
-func (e *engine) traces(r *Results, surveys []*survey, outcomes []*outcome) *Traces {
+func (e *engine) traces(r *Results, surveys []*survey, outcomes []*outcome, designs []made) (*Traces, error) {
 	t := &Traces{Schema: "fewbits/traces/1", Clips: []ClipTrace{}, Sweep: []Curve{}, Sine: []Curve{}, Models: []ModelCurve{}, Bounds: []Bound{}}
 	sum := newSpread(len(r.Designs))
 	var all measure.Histogram
@@ -107,7 +107,7 @@ func (e *engine) traces(r *Results, surveys []*survey, outcomes []*outcome) *Tra
 	}
 	t.Spread = sum.rows(r.Designs, r.Pooled)
 	t.Edges, t.Negative, t.Positive = logHistogram(all.Counts())
-	return t
+	return t, e.curves(t, designs, &all)
 }
 
 // mostTraces is how many clips have curves over time.

@@ -37,7 +37,8 @@ func Run(ctx context.Context, plan Plan) (*Results, *Traces, error) {
 		return nil, nil, err
 	}
 	e.collect(r, surveys, outcomes)
-	return r, e.traces(r, surveys, outcomes), nil
+	t, err := e.traces(r, surveys, outcomes, sets[0])
+	return r, t, err
 }
 
 func closeAll(surveys []*survey) {
