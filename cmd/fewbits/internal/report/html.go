@@ -23,7 +23,7 @@ var (
 	//go:embed page/page.js
 	pageJS string
 
-	page = template.Must(template.New("page").Parse(pageHTML))
+	page = template.Must(template.New("page").Funcs(template.FuncMap{"soft": soft}).Parse(pageHTML))
 )
 
 // Options say what the page stands beside.
@@ -177,3 +177,10 @@ func roleCSS() string {
 	return ":root{color-scheme:light dark;--ground:#f6f7f8;" + light.String() + "}\n" +
 		"@media screen and (prefers-color-scheme:dark){:root{--ground:#0b0f13;" + dark.String() + "}}\n" + classes.String() + "\n"
 }
+
+// soft lets a name break after its punctuation.
+func soft(name string) template.HTML {
+	return template.HTML(breaks.Replace(template.HTMLEscapeString(name)))
+}
+
+var breaks = strings.NewReplacer("_", "_<wbr>", ",", ",<wbr>", ":", ":<wbr>", "=", "=<wbr>")

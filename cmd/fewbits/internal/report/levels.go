@@ -64,8 +64,8 @@ func levelCurve(b *book, p drawing.Panel, c bench.Curve, i int) string {
 	p.Curve(drawing.Stroke(s), c.LevelDB, y)
 	every := max(1, len(y)/6)
 	for j := (i * every / 5) % every; j < len(y); j += every {
-		if !math.IsNaN(y[j]) {
-			at := p.Point(c.LevelDB[j], math.Max(p.Y.Min, y[j]))
+		if y[j] >= p.Y.Min && y[j] <= p.Y.Max {
+			at := p.Point(c.LevelDB[j], y[j])
 			p.F.Marker(s, at.X, at.Y)
 		}
 	}

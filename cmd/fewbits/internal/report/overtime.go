@@ -12,10 +12,10 @@ import (
 // The places of the three panels over time; the page's script redraws in them.
 const (
 	timeLeft, timeRight   = 56, width - 14
-	waveTop, waveFoot     = 10, 84
-	levelTop, levelFoot   = 100, 186
-	framesTop, framesFoot = 202, 366
-	timeHeight            = 410
+	waveTop, waveFoot     = 10, 72
+	levelTop, levelFoot   = 88, 158
+	framesTop, framesFoot = 174, 318
+	timeHeight            = 362
 	levelMin, levelMax    = -90, 0
 	framesMin             = -20
 )
@@ -62,7 +62,7 @@ func pairInk(i int) drawing.Ink {
 func timeTicks(f *drawing.Figure, x drawing.Scale) {
 	f.Group("data-part", "ticks")
 	for _, t := range drawing.Ticks(x.Min, x.Max, 8) {
-		f.Words("tick", x.At(t.At), framesFoot+15, drawing.Middle, t.Label)
+		f.Words("tick", x.At(t.At), framesFoot+18, drawing.Middle, t.Label)
 	}
 	f.Ungroup()
 }

@@ -79,8 +79,7 @@ func tradeoffSet(b *book, plates []plate) *set {
 	return s
 }
 
-// byBitsSet switches by number of bits, the main one first; a single picture
-// needs no switch.
+// byBitsSet switches by number of bits, the main one first.
 func byBitsSet(b *book, name string, plates []plate) *set {
 	s := &set{Name: name}
 	first := 0
@@ -96,7 +95,7 @@ func byBitsSet(b *book, name string, plates []plate) *set {
 			sw.Choices = append(sw.Choices, choice{p.Turn[0], p.Turn[0], i == first})
 		}
 	}
-	if len(plates) > 1 {
+	if len(sw.Choices) > 0 {
 		s.Switches = []switcher{sw}
 	}
 	return s

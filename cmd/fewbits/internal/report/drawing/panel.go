@@ -78,7 +78,7 @@ func (p Panel) Grid(x, y []Tick, xlabel, ylabel string) {
 	for _, t := range x {
 		at := p.X.At(t.At)
 		f.Line(rule, Point{at, top}, Point{at, bottom})
-		f.Words("tick", at, bottom+15, Middle, t.Label)
+		f.Words("tick", at, bottom+18, Middle, t.Label)
 	}
 	for _, t := range y {
 		at := p.Y.At(t.At)
@@ -87,7 +87,7 @@ func (p Panel) Grid(x, y []Tick, xlabel, ylabel string) {
 	}
 	f.Line(Ink{Role: "axis", Width: 1}, Point{left, top}, Point{left, bottom}, Point{right, bottom})
 	if xlabel != "" {
-		f.Words("label", (left+right)/2, bottom+34, Middle, xlabel)
+		f.Words("label", (left+right)/2, bottom+37, Middle, xlabel)
 	}
 	if ylabel != "" {
 		f.Upward("label", 13, (top+bottom)/2, ylabel)
@@ -97,13 +97,40 @@ func (p Panel) Grid(x, y []Tick, xlabel, ylabel string) {
 // Point is the place of a pair of values.
 func (p Panel) Point(x, y float64) Point { return Point{p.X.At(x), p.Y.At(y)} }
 
-// Curve draws y against x, lifting the pen where either is NaN; values outside
-// the axes are drawn at their edge.
+// Curve draws y against x, lifting the pen where either is NaN; what lies above
+// or below the axes is cut off where it crosses their edge.
 func (p Panel) Curve(ink Ink, x, y []float64) {
-	p.F.Path(ink, p.Points(x, y))
+	var out []Point
+	for i := range x {
+		if i > 0 {
+			out = append(out, p.crossings(x[i-1], y[i-1], x[i], y[i])...)
+		}
+		if y[i] >= p.Y.Min && y[i] <= p.Y.Max {
+			out = append(out, p.Point(x[i], y[i]))
+		} else {
+			out = append(out, Up)
+		}
+	}
+	p.F.Path(ink, out)
 }
 
-// Points are the places of pairs of values, clipped to the axes.
+// crossings are the places between two points, in order, where a line leaves or
+// enters the axes.
+func (p Panel) crossings(x0, y0, x1, y1 float64) (out []Point) {
+	edges := []float64{p.Y.Min, p.Y.Max}
+	if y1 < y0 {
+		edges[0], edges[1] = edges[1], edges[0]
+	}
+	for _, edge := range edges {
+		if (y0 < edge) != (y1 < edge) && y0 != edge && y1 != edge && !math.IsNaN(y0+y1) {
+			out = append(out, p.Point(x0+(edge-y0)/(y1-y0)*(x1-x0), edge))
+		}
+	}
+	return out
+}
+
+// Points are the places of pairs of values; those outside the axes stand at
+// their edge.
 func (p Panel) Points(x, y []float64) []Point {
 	out := make([]Point, len(x))
 	for i := range x {
