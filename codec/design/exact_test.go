@@ -161,6 +161,63 @@ func cellCentroid(h Histogram, s Solution, k int, sym Symmetry) (c, mass float64
 	return sum / mass, mass
 }
 
+// plainDP is the quadratic dynamic programme over bins and cells.
+func plainDP(h Histogram, n int) float64 {
+	bins := len(h.Values)
+	best := make([]float64, bins+1)
+	for j := range best {
+		best[j] = math.Inf(1)
+	}
+	best[0] = 0
+	for range n {
+		next := make([]float64, bins+1)
+		for j := range next {
+			next[j] = math.Inf(1)
+			var w, mean, e float64
+			for i := j - 1; i >= 0; i-- { // running moments (West)
+				d := h.Values[i] - h.Values[j-1] - mean
+				e += d * d * h.Weights[i] * w / (w + h.Weights[i])
+				w += h.Weights[i]
+				mean += d * h.Weights[i] / w
+				next[j] = math.Min(next[j], best[i]+e)
+			}
+		}
+		best = next
+	}
+	return best[bins]
+}
+
+// TestExactIsPlainDP: hundreds of bins, weights over twelve decades, values
+// far from 0, equal weights (every length tied with its neighbours).
+func TestExactIsPlainDP(t *testing.T) {
+	r := rand.New(rand.NewPCG(2, 1))
+	for trial := range 24 {
+		var h Histogram
+		x := []float64{0, -0.5, 1e6}[trial%3]
+		for range 50 + r.IntN(200) {
+			w := 1.0
+			switch trial % 4 {
+			case 1:
+				w = math.Pow(10, -12*r.Float64())
+			case 2:
+				w = float64(1 + r.IntN(1000))
+			}
+			x += []float64{1.0 / 32768, r.ExpFloat64() + 1e-6}[trial%2]
+			h.push(x, w)
+		}
+		for _, n := range []int{2, 3, 7, 16, 41} {
+			s, err := ExactData(h, n, Free)
+			if err != nil {
+				t.Fatal(err)
+			}
+			want := plainDP(h, n) / h.Total()
+			if !(math.Abs(s.MSE-want) <= 1e-11*want) {
+				t.Errorf("trial %d, n = %d: mse %g, plain dynamic programme %g", trial, n, s.MSE, want)
+			}
+		}
+	}
+}
+
 func anyHistogram(t *rapid.T) Histogram {
 	seed := rapid.Uint64().Draw(t, "seed")
 	r := rand.New(rand.NewPCG(seed, 7))
@@ -275,17 +332,20 @@ func TestExactRefuses(t *testing.T) {
 }
 
 // benchHistogram is Laplacian counts on all 65,536 words, every bin filled.
-func benchHistogram() Histogram {
+func benchHistogram(count float64) Histogram {
 	var h Histogram
 	for w := -32768; w < 32768; w++ {
 		h.Values = append(h.Values, float64(w)/32768)
-		h.Weights = append(h.Weights, 1+math.Floor(1e6*math.Exp(-math.Abs(float64(w))/2500)))
+		h.Weights = append(h.Weights, 1+math.Floor(count*math.Exp(-math.Abs(float64(w))/2500)))
 	}
 	return h
 }
 
 func benchmarkExact(b *testing.B, n int, sym Symmetry) {
-	h := benchHistogram()
+	benchmarkExactOn(b, benchHistogram(1e4), n, sym)
+}
+
+func benchmarkExactOn(b *testing.B, h Histogram, n int, sym Symmetry) {
 	b.ReportAllocs()
 	var s Solution
 	for b.Loop() {
@@ -300,3 +360,12 @@ func BenchmarkExact65536Free4096(b *testing.B)   { benchmarkExact(b, 4096, Free)
 func BenchmarkExact65536Mirror16(b *testing.B)   { benchmarkExact(b, 16, Mirror) }
 func BenchmarkExact65536Mirror256(b *testing.B)  { benchmarkExact(b, 256, Mirror) }
 func BenchmarkExact65536Mirror4096(b *testing.B) { benchmarkExact(b, 4096, Mirror) }
+
+// BenchmarkExactReal65536Free256 has weights off any grid: pairs of floats.
+func BenchmarkExactReal65536Free256(b *testing.B) {
+	h := benchHistogram(1e4)
+	for i := range h.Weights {
+		h.Weights[i] *= math.Pi
+	}
+	benchmarkExactOn(b, h, 256, Free)
+}
