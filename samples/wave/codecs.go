@@ -45,7 +45,7 @@ var codecs = map[uint16]string{
 	0xF1AC: "FLAC in WAV",
 }
 
-// strangers are openings of files that are no RIFF/WAVE, longest first.
+// strangers are openings of files that are no RIFF/WAVE.
 var strangers = []struct{ magic, name string }{
 	{"riff\x2e\x91\xcf\x11", "a Wave64 file"},
 	{"RIFX", "a big-endian RIFF file (RIFX)"},
@@ -56,9 +56,8 @@ var strangers = []struct{ magic, name string }{
 	{"wvpk", "a WavPack file"},
 	{"NIST", "a SPHERE file"},
 	{"#!AM", "an AMR file"},
-	{"ID3", "an MP3 file"},
-	{"\xff\xfb", "an MP3 file"},
-	{"\xff\xf3", "an MP3 file"},
+	{"ID3", "a tagged file, most likely MP3"},
+	{"\x1a\x45\xdf\xa3", "a Matroska or WebM file"},
 	{"PK\x03\x04", "a ZIP archive"},
 	{"\x1f\x8b", "a gzip file"},
 }
@@ -69,6 +68,12 @@ func stranger(head []byte) string {
 		if bytes.HasPrefix(head, []byte(s.magic)) {
 			return s.name
 		}
+	}
+	switch {
+	case len(head) >= 8 && string(head[4:8]) == "ftyp":
+		return "an MP4 or M4A file"
+	case len(head) >= 2 && head[0] == 0xFF && head[1]&0xE0 == 0xE0:
+		return "MPEG audio (MP3 or AAC)"
 	}
 	return "not a WAV or FLAC file"
 }

@@ -45,15 +45,17 @@ func fixed(dst []byte, planes [][]float64, bits, size int, put func([]byte, int3
 	for c, plane := range planes {
 		at := c * size
 		for i, x := range plane {
-			v := math.Round(x * scale)
-			if !(v >= -scale && v < scale) {
+			v := x * scale
+			if !(v > -scale-0.5 && v < scale-0.5) {
 				if math.IsNaN(x) || math.IsInf(x, 0) {
 					return clipped, notFinite(i, c)
 				}
 				clipped++
 				v = min(max(v, -scale), scale-1)
 			}
-			put(dst[at:at+size:at+size], int32(v))
+			k := int32(v)
+			k += int32(2 * (v - float64(k))) // half away from zero, both steps exact
+			put(dst[at:at+size:at+size], k)
 			at += size * len(planes)
 		}
 	}

@@ -152,6 +152,25 @@ func TestStoreRead(t *testing.T) {
 	})
 }
 
+// TestRounding against math.Round, at halves and their neighbours.
+func TestRounding(t *testing.T) {
+	rapid.Check(t, func(t *rapid.T) {
+		x := float64(rapid.IntRange(-1<<16-4, 1<<16+4).Draw(t, "halves")) / 2
+		switch rapid.IntRange(0, 2).Draw(t, "side") {
+		case 1:
+			x = math.Nextafter(x, math.Inf(1))
+		case 2:
+			x = math.Nextafter(x, math.Inf(-1))
+		}
+		want := min(max(math.Round(x), -1<<15), 1<<15-1)
+		b := make([]byte, 2)
+		clipped, err := PCM16.FromReals(b, [][]float64{{x / (1 << 15)}})
+		if got := int16(binary.LittleEndian.Uint16(b)); err != nil || float64(got) != want || (clipped == 1) != (want != math.Round(x)) {
+			t.Fatalf("%.17g: %d, %d clipped, %v", x, got, clipped, err)
+		}
+	})
+}
+
 // TestWordsStoreRead for words.
 func TestWordsStoreRead(t *testing.T) {
 	rapid.Check(t, func(t *rapid.T) {
