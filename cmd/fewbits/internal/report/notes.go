@@ -18,7 +18,7 @@ func notes(b *book, left []string) (out []string) {
 		out = append(out, "* best at its number of bits by "+b.Leading+".")
 	}
 	if b.IntervalMethod != "" {
-		out = append(out, "95 %: interval of the mean over clips; "+b.IntervalMethod+".")
+		out = append(out, "95 %: interval of "+b.intervalOf()+"; "+b.IntervalMethod+".")
 	}
 	if lead := b.means["lead"].Means; lead != "" {
 		out = append(out, "lead: "+lead+".")
@@ -35,10 +35,6 @@ func notes(b *book, left []string) (out []string) {
 
 // cautions are what to beware of, as sentences.
 func (b *book) cautions() (out []string) {
-	if specs := b.optimistic(); len(specs) > 0 {
-		out = append(out, fmt.Sprintf("%s made on the recordings they are tested on, which flatters them: %s.",
-			plural(len(specs), "design was", "designs were"), strings.Join(specs, ", ")))
-	}
 	for _, w := range b.Warnings {
 		out = append(out, sentence(w))
 	}
@@ -54,20 +50,45 @@ func (b *book) cautions() (out []string) {
 	return out
 }
 
-// clipWarnings says each warning once, with the recordings it is about.
+// clipWarnings says what is wrong with recordings: each kind of fault once,
+// in full for the first recording that has it. Mere notes are left to
+// inspect.
 func (b *book) clipWarnings() (out []string) {
-	files := map[string][]string{}
+	files, first := map[string][]string{}, map[string]string{}
 	var order []string
-	for _, c := range b.Clips {
-		for _, w := range c.Warnings {
-			if files[w] == nil {
-				order = append(order, w)
-			}
-			files[w] = append(files[w], c.File)
+	enter := func(kind, text, file string) {
+		if files[kind] == nil {
+			order, first[kind] = append(order, kind), text
+		}
+		if n := len(files[kind]); n == 0 || files[kind][n-1] != file {
+			files[kind] = append(files[kind], file)
 		}
 	}
-	for _, w := range order {
-		out = append(out, some(files[w], 3)+": "+strings.TrimSuffix(w, ".")+".")
+	for _, c := range b.Clips {
+		told := map[string]bool{}
+		for _, f := range c.Findings {
+			text := f.Sentence + ": " + f.Advice
+			told[text] = true
+			if f.Severity != "note" {
+				enter(f.Kind, text, c.File)
+			}
+		}
+		for _, w := range c.Warnings {
+			if _, ofChannel, _ := strings.Cut(w, ": "); !told[w] && !told[ofChannel] {
+				enter(w, w, c.File)
+			}
+		}
+	}
+	for _, kind := range order {
+		text := strings.TrimSuffix(first[kind], ".") + "."
+		if n := len(files[kind]); n > 1 && first[kind] != kind {
+			out = append(out, fmt.Sprintf("%d of %d recordings, %s. For one, %s: %s", n, len(b.Clips), kind, files[kind][0], text))
+			continue
+		}
+		out = append(out, some(files[kind], 3)+": "+text)
+	}
+	if len(order) > 0 {
+		out = append(out, "More on each recording: fewbits inspect.")
 	}
 	return out
 }
