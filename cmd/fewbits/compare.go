@@ -58,7 +58,7 @@ func runCompare(c *cobra.Command, plan bench.Plan, f *runFlags) error {
 func runInto(c *cobra.Command, plan bench.Plan, f *runFlags, out *folder.Folder) error {
 	bar := newProgress(c.ErrOrStderr())
 	plan.Place, plan.Progress = out.Path, bar.step
-	plan.Workers = runtime.GOMAXPROCS(0)
+	plan.Workers, plan.Command = runtime.GOMAXPROCS(0), commandLine(c)
 	results, traces, err := bench.Run(c.Context(), plan)
 	bar.stop()
 	if err != nil {

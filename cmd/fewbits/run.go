@@ -13,6 +13,8 @@ import (
 
 	"github.com/spf13/cobra"
 	"github.com/spf13/pflag"
+
+	"fewbits/cmd/fewbits/internal/bench"
 )
 
 // Exit statuses, as documented in the README.
@@ -43,7 +45,17 @@ func run(args []string, stdin io.Reader, stdout, stderr io.Writer) int {
 	root.SetIn(stdin)
 	root.SetOut(stdout)
 	root.SetErr(stderr)
-	return status(root.ExecuteContext(ctx), stderr)
+	bench.Version = version()
+	return status(root.ExecuteContext(context.WithValue(ctx, typed{}, args)), stderr)
+}
+
+// typed is the context key of the command line.
+type typed struct{}
+
+// commandLine is what was typed, program name first.
+func commandLine(c *cobra.Command) []string {
+	args, _ := c.Context().Value(typed{}).([]string)
+	return append([]string{"fewbits"}, args...)
 }
 
 // status prints what went wrong and turns it into an exit status.
@@ -59,7 +71,7 @@ func status(err error, stderr io.Writer) int {
 	}
 	fmt.Fprintf(stderr, "fewbits: %v\n", err)
 	var usage usageError
-	if errors.As(err, &usage) || strings.HasPrefix(err.Error(), "unknown command") {
+	if errors.As(err, &usage) {
 		return statusUsage
 	}
 	return statusFailed
@@ -76,9 +88,14 @@ what each choice costs: segmental SNR with its uncertainty, SNR, overload,
 entropy.
 
 Exit status: 0 done, 1 failed, 2 usage, 3 done but some recordings refused.`,
-		Example:       "  fewbits demo\n  fewbits compare --out first-look recordings/",
-		Version:       version(),
-		Args:          exactly(0),
+		Example: "  fewbits demo\n  fewbits compare --out first-look recordings/",
+		Version: version(),
+		Args: func(c *cobra.Command, args []string) error {
+			if len(args) == 0 {
+				return nil
+			}
+			return usagef("no command %q; see fewbits --help", args[0])
+		},
 		RunE:          func(c *cobra.Command, _ []string) error { return c.Help() },
 		SilenceErrors: true,
 		SilenceUsage:  true,

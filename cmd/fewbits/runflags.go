@@ -34,7 +34,6 @@ type runFlags struct {
 	seed               uint64
 	depth              *choice
 	format, pictures   *choice
-	command            []string
 }
 
 // register adds the flags; out is the default output folder.
@@ -75,7 +74,7 @@ func (f *runFlags) defaults() { f.registerMeasuring(&cobra.Command{}) }
 
 // plan checks every flag and turns them into a bench.Plan.
 func (f *runFlags) plan(inputs []string) (bench.Plan, error) {
-	p := bench.Plan{Inputs: inputs, Train: f.train, Audio: !f.noAudio, FramesCSV: f.framesCSV, Command: f.command}
+	p := bench.Plan{Inputs: inputs, Train: f.train, Audio: !f.noAudio, FramesCSV: f.framesCSV}
 	bits, err := parseBits(f.bits)
 	if err != nil {
 		return p, err
