@@ -79,6 +79,22 @@ func (b *book) interval(spec string) [2]bench.Num {
 	return [2]bench.Num{bench.Num(nan), bench.Num(nan)}
 }
 
+// hereOnly: too few clips for intervals that say something of other recordings.
+func (b *book) hereOnly() bool {
+	return slices.ContainsFunc(b.Warnings, func(w string) bool { return strings.HasPrefix(w, hereOnly) })
+}
+
+// hereOnly heads intervals made from blocks of frames.
+const hereOnly = "these recordings only"
+
+// intervalOf is what the 95 % intervals are about.
+func (b *book) intervalOf() string {
+	if b.hereOnly() {
+		return "the mean over these recordings, from blocks of their frames"
+	}
+	return "the mean over clips"
+}
+
 // ranked lists the designs by bits, then by the leading figure, best first.
 func (b *book) ranked() []*bench.Design {
 	var out []*bench.Design
@@ -107,7 +123,7 @@ func (b *book) rank(d *bench.Design) float64 {
 // optimistic lists the designs made on the recordings they are tested on.
 func (b *book) optimistic() (specs []string) {
 	for _, d := range b.Designs {
-		if strings.Contains(d.MadeOn, "tested on") {
+		if strings.Contains(d.MadeOn, "the recordings it is tested on") {
 			specs = append(specs, d.Spec)
 		}
 	}

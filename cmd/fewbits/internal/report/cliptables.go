@@ -10,7 +10,7 @@ import (
 // clipsTable is what each recording is.
 func (b *book) clipsTable() gridTable {
 	t := gridTable{ID: "clips", Caption: "The recordings", Note: "As measured, after preparation. Levels re full scale; noise: level of the frames out of range."}
-	t.Head = words("recording", "format", "preparation")
+	t.Head = append(words("recording"), headCell{Text: "format", Words: true}, headCell{Text: "preparation", Words: true})
 	for _, h := range [][2]string{
 		{"rate", "Hz"}, {"channels", ""}, {"length", "s"}, {"samples", "per channel"}, {"level", "dBov"}, {"active level", "dBov"},
 		{"activity", "%"}, {"peak", "dB"}, {"crest", "dB"}, {"DC", ""}, {"lsb", ""}, {"effective bits", ""},

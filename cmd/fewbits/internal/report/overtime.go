@@ -3,6 +3,7 @@ package report
 import (
 	"fmt"
 	"math"
+	"regexp"
 	"strconv"
 
 	"fewbits/cmd/fewbits/internal/bench"
@@ -22,7 +23,7 @@ const (
 
 // overTime draws a clip: waveform, level, and SNR of two designs.
 func overTime(b *book, t *bench.Traces, c *bench.ClipTrace, a, z *bench.Design) plate {
-	f := canvas("time-"+slug(clipName(b, c.File)), "Over time: "+c.File, timeHeight)
+	f := canvas("time-"+odd.ReplaceAllString(clipName(b, c.File), "-"), "Over time: "+c.File, timeHeight)
 	end := float64(len(c.Max)) * c.StepSeconds
 	x := drawing.Scale{Min: 0, Max: math.Max(end, 1e-9), From: timeLeft, To: timeRight}
 	top := framesMax(t)
@@ -107,6 +108,8 @@ func framesMax(t *bench.Traces) float64 {
 	}
 	return math.Min(100, math.Ceil(top/10)*10)
 }
+
+var odd = regexp.MustCompile(`[^\pL\pN._-]+`)
 
 func clipName(b *book, file string) string {
 	for i := range b.Clips {

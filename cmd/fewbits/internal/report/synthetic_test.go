@@ -23,7 +23,7 @@ func synthetic(clips, points int) (*bench.Results, *bench.Traces) {
 		Definitions:    inventedDefinitions,
 		Leading:        bench.OpenSNR,
 		LeadingWhy:     "segsnr_open_db decides: 62 % of the frames of mu-law:8 sit at the 35 dB ceiling of segsnr_db",
-		IntervalMethod: fmt.Sprintf("paired t on %d clips", clips),
+		IntervalMethod: fmt.Sprintf("Student's t on %d clips", clips),
 		Warnings:       []string{"the recordings have more than one sample rate"},
 		Refused:        []bench.Refusal{{File: "harbour/torn.wav", Reason: "byte offset 36: data chunk claims 90,000 bytes, the file holds 12"}},
 	}

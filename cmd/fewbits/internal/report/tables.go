@@ -18,6 +18,18 @@ type gridTable struct {
 type headCell struct {
 	Text, Unit, Means string
 	Words             bool // a column of words, not numbers
+	Long              bool // of many words
+}
+
+// Class is what the page's style and script know the column by.
+func (h headCell) Class() string {
+	switch {
+	case h.Long:
+		return "w long"
+	case h.Words:
+		return "w"
+	}
+	return ""
 }
 
 type cell struct {
@@ -95,14 +107,15 @@ func (b *book) pooledTables() []gridTable {
 	return []gridTable{
 		b.designTable("pooled", "Quality, pooled", "Over all frames of all clips; SNR from summed energies.", levels, pooled, true),
 		b.designTable("pooled-rest", "Errors, frames and entropy, pooled", "From summed counts and energies.", rest, pooled, false),
-		b.designTable("means", "Means over clips", "Each clip counts the same, however long.", append(levels, rest...), means, false),
+		b.designTable("means", "Quality, mean over clips", "Each clip counts the same, however long.", levels, means, false),
+		b.designTable("means-rest", "Errors, frames and entropy, mean over clips", "", rest, means, false),
 	}
 }
 
 func (b *book) designTable(id, caption, note string, figures []string, of func(*bench.Pooled) bench.Figures, lead bool) gridTable {
 	t := gridTable{ID: id, Caption: caption, Note: note, Head: append(words("design"), headCell{Text: "bits"})}
 	if lead {
-		t.Head = append(t.Head, headCell{Text: "95 %", Unit: "dB", Means: "interval of the mean over clips of " + b.Leading},
+		t.Head = append(t.Head, headCell{Text: "95 %", Unit: b.intervalUnit(), Means: "interval of " + b.intervalOf() + " of " + b.Leading},
 			headCell{Text: "behind", Unit: "dB", Means: "95 % interval of the difference from the leader"},
 			headCell{Text: "lead", Words: true, Means: b.means["lead"].Means})
 		t.Note += b.intervalNote()
@@ -135,7 +148,14 @@ func (b *book) intervalNote() string {
 	if b.IntervalMethod == "" {
 		return ""
 	}
-	return " 95 %: interval of the mean over clips; " + b.IntervalMethod + "."
+	return " 95 %: interval of " + b.intervalOf() + "; " + b.IntervalMethod + "."
+}
+
+func (b *book) intervalUnit() string {
+	if b.hereOnly() {
+		return "dB, these recordings only"
+	}
+	return "dB"
 }
 
 // interval sorts by its lower end.
@@ -157,10 +177,10 @@ func valueOr(f bench.Figures, name string) bench.Num {
 // designsTable is what each design is.
 func (b *book) designsTable() gridTable {
 	t := gridTable{ID: "designs", Caption: "The designs", Note: "Overload bounds with full scale = 1.0. Table bytes at 16 bits a number; comparisons of a binary search."}
-	t.Head = append(words("design", "folder name", "made on"), headCell{Text: "levels"}, headCell{Text: "bits"},
+	t.Head = append(words("design", "folder name"), headCell{Text: "made on", Words: true, Long: true}, headCell{Text: "levels"}, headCell{Text: "bits"},
 		headCell{Text: "overload from"}, headCell{Text: "to"}, headCell{Text: "table", Unit: "bytes"},
 		headCell{Text: "comparisons", Unit: "per sample"}, headCell{Text: "rounds"}, headCell{Text: "residual"},
-		headCell{Text: "optimality shown by", Words: true})
+		headCell{Text: "optimality shown by", Words: true, Long: true})
 	for _, d := range b.ranked() {
 		t.Rows = append(t.Rows, []cell{
 			{Text: d.Spec, Win: b.winner[d.Spec]}, said(d.Name), said(d.MadeOn), integer(int64(d.Levels)), integer(int64(d.Bits)),

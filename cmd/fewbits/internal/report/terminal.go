@@ -4,7 +4,6 @@ import (
 	"fmt"
 	"io"
 	"strings"
-	"unicode/utf8"
 
 	"github.com/jedib0t/go-pretty/v6/table"
 	"github.com/jedib0t/go-pretty/v6/text"
@@ -50,7 +49,7 @@ func columns(b *book) []column {
 		{"design", true, 0, func(d *bench.Design) string { return mark(b, d) + plain(d.Spec) }},
 		{"bits", false, 0, func(d *bench.Design) string { return fmt.Sprint(d.Bits) }},
 		{b.short(b.Leading), false, 0, decibel(b, b.Leading)},
-		{"95 %", false, 3, func(d *bench.Design) string { return span(b.interval(d.Spec)) }},
+		{intervalHead(b), false, 3, func(d *bench.Design) string { return span(b.interval(d.Spec)) }},
 		{"lead", true, 2, func(d *bench.Design) string { return lead(b, d) }},
 	}
 	for i, name := range []string{snr, segSNR, openSNR} {
@@ -62,6 +61,13 @@ func columns(b *book) []column {
 		column{b.short(over), false, 6, func(d *bench.Design) string { return percent(b.figure(d.Spec, over)) }},
 		column{b.short(entropy), false, 7, func(d *bench.Design) string { return fixed(b.figure(d.Spec, entropy), 2) }},
 	)
+}
+
+func intervalHead(b *book) string {
+	if b.hereOnly() {
+		return "95 %, these\nrecordings only"
+	}
+	return "95 %"
 }
 
 func decibel(b *book, name string) func(*bench.Design) string {
@@ -102,7 +108,7 @@ func fit(b *book, cols []column, width int) (kept []column, left []string) {
 		if kept[worst].drop == 0 {
 			break
 		}
-		left = append(left, kept[worst].head)
+		left = append(left, strings.ReplaceAll(kept[worst].head, "\n", " "))
 		kept = append(append([]column{}, kept[:worst]...), kept[worst+1:]...)
 	}
 	return kept, left
@@ -111,7 +117,7 @@ func fit(b *book, cols []column, width int) (kept []column, left []string) {
 func tableWidth(b *book, cols []column) int {
 	total := 2 * len(cols)
 	for _, c := range cols {
-		w := utf8.RuneCountInString(c.head)
+		w := text.LongestLineLen(c.head)
 		for i := range b.Designs {
 			w = max(w, text.StringWidthWithoutEscSequences(c.cell(&b.Designs[i])))
 		}

@@ -54,7 +54,7 @@ func tradeoff(b *book, t *bench.Traces, quality, cost string) plate {
 	p.Grid(drawing.Ticks(p.X.Min, p.X.Max, 9), drawing.Ticks(p.Y.Min, p.Y.Max, 8), costLabel(cost), b.quality(quality))
 	caption := "Filled marks: pooled over all frames and clips."
 	if quality == b.Leading {
-		caption += " Upright bars: 95 % interval of the mean over clips, the tick on it that mean."
+		caption += " Upright bars: 95 % interval of " + b.intervalOf() + "; the tick on it is the mean over clips."
 	}
 	if cost == "bits" {
 		caption += " Designs of the same number of bits stand a little apart so that none hides another."
