@@ -6,8 +6,27 @@ import (
 	"fewbits/samples/wave"
 )
 
-// Draft is a recording being made from another one: its frames are appended in
-// order to a temporary file, so that memory stays constant.
+// Source makes frames out of another recording's as they are read. Its methods
+// are called from several goroutines, with as many planes as it has channels
+// and for frames that are there; ReadWords only where Words is true.
+type Source interface {
+	Words() bool
+	ReadWords(dst [][]int16, start int64) error
+	Read(dst [][]float64, start int64) error
+}
+
+// Derive is the recording of so many frames at r's rate that s makes out of r as
+// they are read. It owns r: closing it closes r, too.
+func (r *Recording) Derive(s Source, channels int, frames int64, warnings ...string) *Recording {
+	d := &Recording{info: r.info, origin: r, made: s}
+	d.info.Channels, d.info.Frames = channels, frames
+	d.info.Warnings = append(append([]string(nil), r.info.Warnings...), warnings...)
+	return d
+}
+
+// Draft is a recording being made from another one where that takes too long to
+// be done again at each reading: its frames are appended in order to a temporary
+// file, so that memory stays constant.
 type Draft struct {
 	origin *Recording
 	made   *Recording
@@ -15,42 +34,28 @@ type Draft struct {
 }
 
 // Draft starts a recording made from r, with another rate in Hz and number of
-// channels: of words where words is set, else of real numbers in 64 bits.
-func (r *Recording) Draft(rate, channels int, words bool) (*Draft, error) {
+// channels.
+func (r *Recording) Draft(rate, channels int) (*Draft, error) {
 	s, err := newSpool()
 	if err != nil {
 		return nil, &Error{r.info.Path, err}
 	}
 	made := &Recording{info: r.info, spool: s, enc: wave.Float64}
-	if words {
-		made.enc = wave.PCM16
-	}
 	made.info.Rate, made.info.Channels, made.info.Frames = rate, channels, 0
-	made.info.Warnings = append([]string(nil), r.info.Warnings...)
 	return &Draft{origin: r, made: made}, nil
 }
 
-// AppendWords adds frames, value = word/2^15; it panics in a draft of reals.
-func (d *Draft) AppendWords(planes [][]int16) error {
-	if d.made.enc != wave.PCM16 {
-		panic("samples: words appended to a draft of reals")
-	}
-	b := d.room(len(planes), len(planes[0]), even(planes))
-	wave.FromWords(b, planes)
-	return d.append(b, len(planes[0]))
-}
-
-// Append adds frames, full scale = 1.0; NaN and infinity are an error. It panics
-// in a draft of words.
+// Append adds frames, full scale = 1.0; NaN and infinity are an error.
 func (d *Draft) Append(planes [][]float64) error {
-	if d.made.enc != wave.Float64 {
-		panic("samples: reals appended to a draft of words")
-	}
 	b := d.room(len(planes), len(planes[0]), even(planes))
 	if _, err := d.made.enc.FromReals(b, planes); err != nil {
 		return &Error{d.made.info.Path, err}
 	}
-	return d.append(b, len(planes[0]))
+	if _, err := d.made.spool.Write(b); err != nil {
+		return &Error{d.made.info.Path, err}
+	}
+	d.made.info.Frames += int64(len(planes[0]))
+	return nil
 }
 
 // room gives a buffer for frames.
@@ -65,20 +70,9 @@ func (d *Draft) room(planes, frames int, same bool) []byte {
 	return d.buf[:n]
 }
 
-func (d *Draft) append(b []byte, frames int) error {
-	if _, err := d.made.spool.Write(b); err != nil {
-		return &Error{d.made.info.Path, err}
-	}
-	d.made.info.Frames += int64(frames)
-	return nil
-}
-
-// Warn adds a warning to the new recording's.
-func (d *Draft) Warn(text string) { d.made.info.Warnings = append(d.made.info.Warnings, text) }
-
 // Recording ends the draft. The new recording owns the one it was made from:
 // closing it closes both.
-func (d *Draft) Recording() (*Recording, error) {
+func (d *Draft) Recording(warnings ...string) (*Recording, error) {
 	err := d.made.spool.flush()
 	if err == nil && d.made.info.Frames == 0 {
 		err = errors.New("nothing is left after preparation")
@@ -88,6 +82,7 @@ func (d *Draft) Recording() (*Recording, error) {
 		return nil, &Error{d.made.info.Path, err}
 	}
 	d.made.origin = d.origin
+	d.made.info.Warnings = append(append([]string(nil), d.made.info.Warnings...), warnings...)
 	return d.made, nil
 }
 

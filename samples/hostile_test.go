@@ -194,6 +194,9 @@ func (c row) check(t *testing.T, path string) {
 
 func (c row) content(t *testing.T, r *Recording) {
 	i := r.Info()
+	if p, err := Peek(i.Path); err != nil || p.Format() != c.format || p.Rate != i.Rate || p.Channels != i.Channels || p.Bytes != i.Bytes {
+		t.Errorf("a peek gives %+v, %v", p, err)
+	}
 	if i.Frames != c.frames || i.Format() != c.format || len(i.Warnings) != len(c.warn) {
 		t.Fatalf("%s, %d frames, warnings %q", i.Format(), i.Frames, i.Warnings)
 	}

@@ -6,6 +6,13 @@ import (
 	"fewbits/samples/wave"
 )
 
+// Limits of what is read; beyond them lie damaged headers rather than recordings.
+const (
+	MinRate     = wave.MinRate // Hz
+	MaxRate     = wave.MaxRate // Hz
+	MaxChannels = wave.MaxChannels
+)
+
 // Info is what is known of a recording without listening to it.
 type Info struct {
 	Path      string
@@ -38,9 +45,13 @@ func (i Info) Format() string {
 func (i Info) Seconds() float64 { return float64(i.Frames) / float64(i.Rate) }
 
 func infoOf(path, container string, size int64, f *wave.Format) Info {
+	bits := f.Encoding.Bits()
+	if container == "FLAC" {
+		bits = f.ValidBits // it stores no more
+	}
 	return Info{
 		Path: path, Container: container, Encoding: f.Encoding.String(),
-		Rate: f.Rate, Channels: f.Channels, Bits: f.Encoding.Bits(), ValidBits: f.ValidBits,
+		Rate: f.Rate, Channels: f.Channels, Bits: bits, ValidBits: f.ValidBits,
 		Frames: f.Frames, Bytes: size, Warnings: f.Warnings,
 	}
 }

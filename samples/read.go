@@ -53,6 +53,9 @@ func (r *Recording) ReadWords(dst [][]int16, start int64) error {
 		panic("samples: ReadWords of samples off the 16-bit grid")
 	}
 	r.check(len(dst), len(dst[0]), even(dst), start)
+	if r.made != nil {
+		return r.made.ReadWords(dst, start)
+	}
 	if r.enc.Bits() == 16 && len(dst) == 1 && littleEndian {
 		return r.wrap(r.bytes(asBytes(dst[0]), 2*start))
 	}
@@ -63,6 +66,9 @@ func (r *Recording) ReadWords(dst [][]int16, start int64) error {
 // scale = 1.0; the values are finite. It panics like ReadWords.
 func (r *Recording) Read(dst [][]float64, start int64) error {
 	r.check(len(dst), len(dst[0]), even(dst), start)
+	if r.made != nil {
+		return r.made.Read(dst, start)
+	}
 	return r.wrap(blocks(r, dst, start, r.enc.Reals))
 }
 

@@ -19,7 +19,8 @@ type Recording struct {
 	info   Info
 	file   *os.File   // as the user named it
 	spool  *spool     // where the samples are, if not in file
-	origin *Recording // what this one was prepared from; owned
+	origin *Recording // what this one was made from; owned
+	made   Source     // makes the samples out of origin's; nil: they are stored
 	enc    wave.Encoding
 	start  int64 // of the samples in file or spool
 }
@@ -35,23 +36,29 @@ func Open(path string) (*Recording, error) {
 }
 
 func open(path string) (*Recording, error) {
-	stat, err := os.Stat(path)
-	if err != nil {
-		return nil, err
-	}
-	if !stat.Mode().IsRegular() {
-		return nil, errors.New("not a regular file: give a recording or a folder of recordings")
-	}
-	file, err := os.Open(path)
+	file, size, err := openFile(path)
 	if err != nil {
 		return nil, err
 	}
 	r := &Recording{file: file}
-	if err := r.recognize(path, stat.Size()); err != nil {
+	if err := r.recognize(path, size); err != nil {
 		r.Close()
 		return nil, err
 	}
 	return r, nil
+}
+
+// openFile opens a regular file; anything else might make the program wait.
+func openFile(path string) (*os.File, int64, error) {
+	stat, err := os.Stat(path)
+	if err != nil {
+		return nil, 0, err
+	}
+	if !stat.Mode().IsRegular() {
+		return nil, 0, errors.New("not a regular file: give a recording or a folder of recordings")
+	}
+	file, err := os.Open(path)
+	return file, stat.Size(), err
 }
 
 // recognize finds out where and how the samples are stored.
@@ -67,6 +74,26 @@ func (r *Recording) recognize(path string, size int64) (err error) {
 	return r.checkFinite()
 }
 
+// Peek tells what a file's header says, without a look at its samples: quick,
+// but Open may still refuse it. Frames is 0 where a FLAC file does not say.
+func Peek(path string) (Info, error) {
+	file, size, err := openFile(path)
+	if err != nil {
+		return Info{}, &Error{path, plain(err)}
+	}
+	defer file.Close()
+	container, f := "FLAC", (*wave.Format)(nil)
+	if flac.Is(file) {
+		f, err = flac.Header(file, size)
+	} else if f, err = wave.Walk(file, size); err == nil {
+		container = f.Container
+	}
+	if err != nil {
+		return Info{}, &Error{path, plain(err)}
+	}
+	return infoOf(path, container, size, f), nil
+}
+
 // unpack decodes a FLAC file into a spool.
 func (r *Recording) unpack(path string, size int64) (err error) {
 	if r.spool, err = newSpool(); err != nil {
@@ -77,7 +104,6 @@ func (r *Recording) unpack(path string, size int64) (err error) {
 		return err
 	}
 	r.info, r.enc = infoOf(path, "FLAC", size, f), f.Encoding
-	r.info.Bits = f.ValidBits // a FLAC file stores no more
 	return r.spool.flush()
 }
 
@@ -121,7 +147,12 @@ func (r *Recording) Info() Info { return r.info }
 
 // Words says whether every sample lies on the 16-bit grid by its format (PCM up
 // to 16 bits, G.711), so that ReadWords may be used.
-func (r *Recording) Words() bool { return r.enc.OnWords() }
+func (r *Recording) Words() bool {
+	if r.made != nil {
+		return r.made.Words()
+	}
+	return r.enc.OnWords()
+}
 
 // SHA256 is the hexadecimal digest of the file's bytes, for a prepared recording
 // of the file it was made from.

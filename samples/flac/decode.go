@@ -29,6 +29,7 @@ const (
 // decoder is a file being decoded.
 type decoder struct {
 	in     *counter
+	start  int64 // of the stream in the file
 	size   int64
 	out    io.Writer
 	info   *meta.StreamInfo
@@ -46,15 +47,10 @@ type decoder struct {
 // gives a *wave.Fault; a failure of r or w its own error. A file that ends early
 // is decoded as far as it goes, with a warning.
 func Decode(r io.ReaderAt, size int64, w io.Writer) (f *wave.Format, err error) {
-	quieten()
-	start := tagged(r)
-	d := &decoder{in: newCounter(r, start, size), size: size, out: w, sum: md5.New(), limit: base + ratio*size}
-	defer func() {
-		if p := recover(); p != nil {
-			f, err = nil, d.fault(d.in.at(), "the decoder failed (%v)", p)
-		}
-	}()
-	if err := d.open(start); err != nil {
+	d := newDecoder(r, size)
+	d.out, d.sum, d.limit = w, md5.New(), base+ratio*size
+	defer d.caught(&f, &err)
+	if err := d.open(); err != nil {
 		return nil, err
 	}
 	for err == nil && !d.ended {
@@ -66,12 +62,38 @@ func Decode(r io.ReaderAt, size int64, w io.Writer) (f *wave.Format, err error) 
 	return d.settle()
 }
 
+// Header tells what Decode would, from the stream's header alone: with as many
+// frames as it claims, 0 where it does not say.
+func Header(r io.ReaderAt, size int64) (f *wave.Format, err error) {
+	d := newDecoder(r, size)
+	defer d.caught(&f, &err)
+	if err := d.open(); err != nil {
+		return nil, err
+	}
+	d.f.Frames = int64(d.info.NSamples)
+	return &d.f, nil
+}
+
+func newDecoder(r io.ReaderAt, size int64) *decoder {
+	quieten()
+	start := max(0, tagged(r))
+	return &decoder{in: newCounter(r, start, size), start: start, size: size}
+}
+
+// caught turns a panic within the library into an error.
+func (d *decoder) caught(f **wave.Format, err *error) {
+	if p := recover(); p != nil {
+		*f, *err = nil, d.fault(d.in.at(), "the decoder failed (%v)", p)
+	}
+}
+
 func (d *decoder) fault(at int64, format string, args ...any) error {
 	return &wave.Fault{Offset: at, What: "FLAC: " + fmt.Sprintf(format, args...), Remedy: damaged}
 }
 
 // open reads the stream's header.
-func (d *decoder) open(start int64) error {
+func (d *decoder) open() error {
+	start := d.start
 	stream, err := lib.New(d.in.r)
 	if err != nil {
 		return d.fault(start, "no usable stream header (%v)", err)

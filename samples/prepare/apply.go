@@ -1,6 +1,7 @@
 package prepare
 
 import (
+	"errors"
 	"fmt"
 	"math"
 
@@ -13,8 +14,11 @@ import (
 // caller's.
 func Apply(r *samples.Recording, p Plan) (*samples.Recording, []string, error) {
 	made, done, err := apply(r, p)
+	if known := (*samples.Error)(nil); err != nil && !errors.As(err, &known) {
+		err = &samples.Error{Path: r.Info().Path, Err: err}
+	}
 	if err != nil {
-		return nil, nil, &samples.Error{Path: r.Info().Path, Err: err}
+		return nil, nil, err
 	}
 	return made, done, nil
 }
@@ -27,7 +31,7 @@ func apply(r *samples.Recording, p Plan) (*samples.Recording, []string, error) {
 	if err != nil {
 		return nil, nil, err
 	}
-	j := &job{r: r, plan: p, view: newView(r, p.Channel, from, to), rate: r.Info().Rate}
+	j := &job{r: r, plan: p, view: newView(r, p.Channel, from, to)}
 	if err := j.prepare(); err != nil {
 		return nil, nil, err
 	}
@@ -43,11 +47,9 @@ type job struct {
 	r      *samples.Recording
 	plan   Plan
 	view   *view
-	rate   int
 	filter *filter
-	gain   float64
-	over   int64
-	draft  *samples.Draft
+	gain   float64 // 0: none
+	over   int64   // samples that the gain takes beyond full scale
 	done   []string
 }
 
@@ -75,7 +77,6 @@ func (j *job) prepare() (err error) {
 		if j.filter, err = newFilter(i.Rate, p.Rate); err != nil {
 			return err
 		}
-		j.rate = p.Rate
 		j.did("resampled from %d to %d Hz (pass band to %.0f Hz, stop band -100 dB from %.0f Hz)", i.Rate, p.Rate,
 			passEdge*float64(min(i.Rate, p.Rate))/2, float64(min(i.Rate, p.Rate))/2)
 	}
@@ -98,57 +99,55 @@ func list(x []float64) string {
 	return s
 }
 
-// make runs the samples through the steps into a new recording.
-func (j *job) make() (made *samples.Recording, err error) {
-	words := j.view.words() && j.filter == nil && j.gain == 0
-	if j.draft, err = j.r.Draft(j.rate, j.view.channels, words); err != nil {
-		return nil, err
+// make gives the new recording: made as it is read, but for a change of rate.
+func (j *job) make() (*samples.Recording, error) {
+	if j.filter != nil {
+		return j.resampled()
 	}
-	switch {
-	case words:
-		err = j.copyWords()
-	case j.filter != nil:
-		err = j.filter.resample(j.view, j.finish)
-	default:
-		err = j.view.blocks(func(planes [][]float64, _ int64) error { return j.finish(planes) })
-	}
-	if err != nil {
-		j.draft.Drop()
-		return nil, err
-	}
-	if j.over > 0 {
-		j.draft.Warn(fmt.Sprintf("the gain of %+.2f dB takes %d samples beyond full scale: choose a lower level", j.plan.GainDB, j.over))
-	}
-	return j.draft.Recording()
-}
-
-// copyWords keeps words words.
-func (j *job) copyWords() error {
-	v, size := j.view, int64(blockSize(j.view.channels))
-	planes := grid[int16](v.channels, int(size))
-	for at := int64(0); at < v.frames; at += size {
-		part := shorten(planes, v.frames-at)
-		if err := v.readWords(part, at); err != nil {
-			return err
-		}
-		if err := j.draft.AppendWords(part); err != nil {
-			return err
-		}
-	}
-	return nil
-}
-
-// finish applies the gain, counts what it takes beyond full scale, and stores.
-func (j *job) finish(planes [][]float64) error {
 	if j.gain != 0 {
-		for _, p := range planes {
-			for i, x := range p {
-				p[i] = x * j.gain
-				if math.Abs(p[i]) > 1 && math.Abs(x) <= 1 {
-					j.over++
-				}
+		if err := j.view.blocks(func(planes [][]float64) { j.amplify(planes) }); err != nil {
+			return nil, err
+		}
+		j.view.gain = j.gain
+	}
+	return j.r.Derive(j.view, j.view.channels, j.view.frames, j.warnings()...), nil
+}
+
+// resampled runs the samples through the filter into a new recording.
+func (j *job) resampled() (made *samples.Recording, err error) {
+	draft, err := j.r.Draft(j.plan.Rate, j.view.channels)
+	if err != nil {
+		return nil, err
+	}
+	err = j.filter.resample(j.view, func(planes [][]float64) error {
+		j.amplify(planes)
+		return draft.Append(planes)
+	})
+	if err != nil {
+		draft.Drop()
+		return nil, err
+	}
+	return draft.Recording(j.warnings()...)
+}
+
+// amplify applies the gain and counts what it takes beyond full scale.
+func (j *job) amplify(planes [][]float64) {
+	if j.gain == 0 {
+		return
+	}
+	for _, p := range planes {
+		for i, x := range p {
+			p[i] = x * j.gain
+			if math.Abs(p[i]) > 1 && math.Abs(x) <= 1 {
+				j.over++
 			}
 		}
 	}
-	return j.draft.Append(planes)
+}
+
+func (j *job) warnings() []string {
+	if j.over == 0 {
+		return nil
+	}
+	return []string{fmt.Sprintf("the gain of %+.2f dB takes %d samples beyond full scale: choose a lower level", j.plan.GainDB, j.over)}
 }

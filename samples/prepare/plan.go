@@ -5,7 +5,6 @@ import (
 	"math"
 
 	"fewbits/samples"
-	"fewbits/samples/wave"
 )
 
 // Plan is what to do. The zero Plan does nothing.
@@ -30,8 +29,8 @@ func (p Plan) Check() error {
 		return fmt.Errorf("end of %g s: give more than the start of %g s", p.To, p.From)
 	case p.Channel != "" && p.Channel != "each" && p.Channel != "first" && p.Channel != "mix":
 		return fmt.Errorf("channel %q: give first, each or mix", p.Channel)
-	case p.Rate != 0 && (p.Rate < wave.MinRate || p.Rate > wave.MaxRate):
-		return fmt.Errorf("rate of %d Hz: give %d to %d", p.Rate, wave.MinRate, wave.MaxRate)
+	case p.Rate != 0 && (p.Rate < samples.MinRate || p.Rate > samples.MaxRate):
+		return fmt.Errorf("rate of %d Hz: give %d to %d", p.Rate, samples.MinRate, samples.MaxRate)
 	case !(math.Abs(p.GainDB) <= MaxGainDB):
 		return fmt.Errorf("gain of %g dB: give -%d to %d", p.GainDB, MaxGainDB, MaxGainDB)
 	}

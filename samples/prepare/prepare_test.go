@@ -1,10 +1,13 @@
 package prepare
 
 import (
+	"errors"
 	"math"
 	"path/filepath"
 	"strings"
 	"testing"
+
+	"pgregory.net/rapid"
 
 	"fewbits/samples"
 )
@@ -156,6 +159,48 @@ func TestSteps(t *testing.T) {
 		if c.name == "gain" && (len(r.Info().Warnings) != 1 || !strings.Contains(r.Info().Warnings[0], "takes 1 samples beyond")) {
 			t.Errorf("gain: warnings %q", r.Info().Warnings)
 		}
+	}
+}
+
+// TestViews: any stretch of what is made as it is read is that part of the whole,
+// also over the borders of blocks and when steps are carried out one by one.
+func TestViews(t *testing.T) {
+	const n = 30_000
+	planes := grid[float64](3, n)
+	for i := range n {
+		planes[0][i], planes[1][i], planes[2][i] = float64(i%8192)/32768, -float64(i%1000)/32768, float64(i%77)/32768
+	}
+	mean := 0.0
+	for i := 800; i < 24000; i++ {
+		mean += (planes[0][i] + planes[1][i] + planes[2][i]) / 3 / 23200
+	}
+	first, _ := apply1(t, record(t, 8000, samples.Depth16, planes...), Plan{Channel: "first", From: 0.1})
+	mix, _ := apply1(t, record(t, 8000, samples.Depth24, planes...), Plan{Channel: "mix", From: 0.1, To: 3, RemoveDC: true})
+	mix, _ = apply1(t, mix, Plan{From: 1, GainDB: 20 * math.Log10(2)})
+	if !first.Words() || mix.Words() || first.Info().Frames != n-800 || mix.Info().Frames != 23200-8000 {
+		t.Fatalf("%+v, %+v", first.Info(), mix.Info())
+	}
+	rapid.Check(t, func(t *rapid.T) {
+		start := rapid.IntRange(0, 15200).Draw(t, "start")
+		length := rapid.IntRange(0, 15200-start).Draw(t, "length")
+		words, reals, mixed := grid[int16](1, length), grid[float64](1, length), grid[float64](1, length)
+		if err := errors.Join(first.ReadWords(words, int64(start)), first.Read(reals, int64(start)), mix.Read(mixed, int64(start))); err != nil {
+			t.Fatal(err)
+		}
+		for i := range length {
+			at := 800 + start + i
+			if x := planes[0][at]; reals[0][i] != x || float64(words[0][i])/32768 != x {
+				t.Fatalf("first: frame %d is %g and %d, want %g", at, reals[0][i], words[0][i], x)
+			}
+			at += 8000
+			if x := 2 * ((planes[0][at]+planes[1][at]+planes[2][at])/3 - mean); math.Abs(mixed[0][i]-x) > 1e-12 {
+				t.Fatalf("mix: frame %d is %g, want %g", at, mixed[0][i], x)
+			}
+		}
+	})
+	sum, err := mix.SHA256()
+	if err != nil || len(sum) != 64 {
+		t.Errorf("%q, %v", sum, err)
 	}
 }
 

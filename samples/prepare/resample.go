@@ -14,7 +14,7 @@ func (f *filter) resample(v *view, do func(planes [][]float64) error) error {
 		last := m + int64(len(out[0])) - 1
 		first := m*f.down/f.up - int64(f.back)
 		in := grid[float64](v.channels, int(last*f.down/f.up-int64(f.back)-first)+f.taps)
-		if err := v.read(in, first); err != nil {
+		if err := v.padded(in, first); err != nil {
 			return err
 		}
 		f.run(out, in, m, first)

@@ -3,7 +3,7 @@ package prepare
 import "fewbits/samples"
 
 // view is the stretch and the channels of a recording that a plan keeps, less
-// each channel's DC.
+// each channel's DC, times a gain: made as it is read.
 type view struct {
 	r        *samples.Recording
 	from     int64
@@ -12,8 +12,10 @@ type view struct {
 	first    bool      // only the first channel
 	mix      bool      // the mean of all
 	dc       []float64 // a channel; nil: nothing to subtract
-	planes   [][]float64
+	gain     float64   // 0: none
 }
+
+var _ samples.Source = (*view)(nil)
 
 func newView(r *samples.Recording, channel string, from, to int64) *view {
 	i := r.Info()
@@ -24,21 +26,73 @@ func newView(r *samples.Recording, channel string, from, to int64) *view {
 	return v
 }
 
-// words says whether the view lies on the 16-bit grid.
-func (v *view) words() bool { return v.r.Words() && !v.mix && v.dc == nil }
+// Words says whether the view lies on the 16-bit grid.
+func (v *view) Words() bool { return v.r.Words() && !v.mix && v.dc == nil && v.gain == 0 }
 
-// readWords fills planes from frame at of the view on.
-func (v *view) readWords(dst [][]int16, at int64) error {
+// ReadWords fills planes from frame at of the view on.
+func (v *view) ReadWords(dst [][]int16, at int64) error {
 	if !v.first {
 		return v.r.ReadWords(dst, v.from+at)
 	}
-	all := grid[int16](v.r.Info().Channels, len(dst[0]))
-	all[0] = dst[0]
-	return v.r.ReadWords(all, v.from+at)
+	return merge(v, dst[0], at, v.r.ReadWords, func(int16, int) int16 { panic("prepare: words are not mixed") })
 }
 
-// read fills planes from frame at of the view on; frames outside are 0.
-func (v *view) read(dst [][]float64, at int64) error {
+// Read fills planes from frame at of the view on.
+func (v *view) Read(dst [][]float64, at int64) error {
+	if err := v.channel(dst, at); err != nil {
+		return err
+	}
+	for c, dc := range v.dc {
+		for i := range dst[c] {
+			dst[c][i] -= dc
+		}
+	}
+	if v.gain != 0 {
+		for _, p := range dst {
+			for i := range p {
+				p[i] *= v.gain
+			}
+		}
+	}
+	return nil
+}
+
+// channel reads with the channels chosen or mixed.
+func (v *view) channel(dst [][]float64, at int64) error {
+	if !v.first && !v.mix {
+		return v.r.Read(dst, v.from+at)
+	}
+	return merge(v, dst[0], at, v.r.Read, func(sum float64, n int) float64 { return sum / float64(n) })
+}
+
+// merge makes one plane of all channels, a block at a time: the first, or for a
+// mix the mean of their sum.
+func merge[T int16 | float64](v *view, dst []T, at int64, read func([][]T, int64) error, mean func(T, int) T) error {
+	const block = 4096
+	n := v.r.Info().Channels
+	planes := grid[T](n, min(block, len(dst)))
+	for lo := 0; lo < len(dst); lo += block {
+		part := shorten(planes, int64(len(dst)-lo))
+		if err := read(part, v.from+at+int64(lo)); err != nil {
+			return err
+		}
+		out := dst[lo : lo+len(part[0])]
+		copy(out, part[0])
+		for i := range out {
+			if !v.mix {
+				break
+			}
+			for _, p := range part[1:] {
+				out[i] += p[i]
+			}
+			out[i] = mean(out[i], n)
+		}
+	}
+	return nil
+}
+
+// padded fills planes from frame at on, also outside the view, where 0 is.
+func (v *view) padded(dst [][]float64, at int64) error {
 	lo, hi := max(0, -at), min(int64(len(dst[0])), v.frames-at)
 	inside := make([][]float64, len(dst))
 	for c, p := range dst {
@@ -50,47 +104,13 @@ func (v *view) read(dst [][]float64, at int64) error {
 	if lo >= hi {
 		return nil
 	}
-	if err := v.inside(inside, v.from+at+lo); err != nil {
-		return err
-	}
-	for c, dc := range v.dc {
-		for i := range inside[c] {
-			inside[c][i] -= dc
-		}
-	}
-	return nil
-}
-
-// inside reads frames of the recording and chooses or mixes the channels.
-func (v *view) inside(dst [][]float64, at int64) error {
-	if !v.first && !v.mix {
-		return v.r.Read(dst, at)
-	}
-	n := v.r.Info().Channels
-	if len(v.planes) == 0 || len(v.planes[0]) < len(dst[0]) {
-		v.planes = grid[float64](n, len(dst[0]))
-	}
-	all := make([][]float64, n)
-	for c := range all {
-		all[c] = v.planes[c][:len(dst[0])]
-	}
-	err := v.r.Read(all, at)
-	copy(dst[0], all[0])
-	if v.mix {
-		for i := range dst[0] {
-			for c := 1; c < n; c++ {
-				dst[0][i] += all[c][i]
-			}
-			dst[0][i] /= float64(n)
-		}
-	}
-	return err
+	return v.Read(inside, at+lo)
 }
 
 // removeDC measures each channel's mean and subtracts it from now on.
 func (v *view) removeDC() error {
 	sums := make([]float64, v.channels)
-	err := v.blocks(func(planes [][]float64, _ int64) error {
+	err := v.blocks(func(planes [][]float64) {
 		for c, p := range planes {
 			block := 0.0
 			for _, x := range p {
@@ -98,7 +118,6 @@ func (v *view) removeDC() error {
 			}
 			sums[c] += block
 		}
-		return nil
 	})
 	for c := range sums {
 		sums[c] /= float64(v.frames)
@@ -108,17 +127,15 @@ func (v *view) removeDC() error {
 }
 
 // blocks goes through the view.
-func (v *view) blocks(do func(planes [][]float64, at int64) error) error {
+func (v *view) blocks(do func(planes [][]float64)) error {
 	size := blockSize(v.channels)
 	planes := grid[float64](v.channels, size)
 	for at := int64(0); at < v.frames; at += int64(size) {
 		part := shorten(planes, v.frames-at)
-		if err := v.read(part, at); err != nil {
+		if err := v.Read(part, at); err != nil {
 			return err
 		}
-		if err := do(part, at); err != nil {
-			return err
-		}
+		do(part)
 	}
 	return nil
 }
