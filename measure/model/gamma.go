@@ -1,71 +1,73 @@
 package model
 
-import "math"
+import (
+	"math"
 
-// Gamma is the speech trade's gamma density, shape 1/2: exp(-|x|/t) /
-// (2 sqrt(pi t |x|)), rms = t sqrt(3)/2. Infinite at 0. Source: Paez and
-// Glisson 1972.
-type Gamma struct{ Scale float64 } // t
+	"gonum.org/v1/gonum/mathext"
+)
 
-// Name is "gamma".
-func (Gamma) Name() string { return "gamma" }
-
-// RMS is t sqrt(3)/2.
-func (m Gamma) RMS() float64 { return m.Scale * sqrt3 / 2 }
-
-// PDF is the density; +Inf at 0.
-func (m Gamma) PDF(x float64) float64 {
-	x = math.Abs(x)
-	return math.Exp(-x/m.Scale) / (2 * math.Sqrt(math.Pi*m.Scale*x))
+// Gamma is the two-sided gamma density |x|^(k-1) exp(-|x|/t) / (2 Gamma(k)
+// t^k), rms = t sqrt(k(k+1)), infinite at 0 for k < 1. Shape 1/2 is the speech
+// trade's gamma (Paez, Glisson 1972), 1 the Laplacian.
+type Gamma struct {
+	Shape, Scale float64 // k, t
+	d            stacy
 }
 
-// CDF is the distribution function: with x = t u^2 the half line is that of a
-// Gaussian in u, so that P(|X| > x) = erfc(sqrt(x/t)).
-func (m Gamma) CDF(x float64) float64 {
-	if x < 0 {
-		return math.Erfc(math.Sqrt(-x/m.Scale)) / 2
+// newGamma wants parameters in range.
+func newGamma(shape, scale float64) Gamma { return Gamma{shape, scale, gammaHalfLine(shape)} }
+
+// Name is "gamma" for shape 1/2, else "free-gamma".
+func (m Gamma) Name() string {
+	if m.Shape == 0.5 {
+		return "gamma"
 	}
-	return 1 - math.Erfc(math.Sqrt(x/m.Scale))/2
+	return "free-gamma"
 }
+
+// Parameters are k and t.
+func (m Gamma) Parameters() (shape, scale float64) { return m.Shape, m.Scale }
+
+// RMS is t sqrt(k(k+1)).
+func (m Gamma) RMS() float64 { return m.Scale * math.Sqrt(m.Shape*(m.Shape+1)) }
+
+// Kurtosis is (k+2)(k+3)/(k(k+1)).
+func (m Gamma) Kurtosis() float64 { return (m.Shape + 2) * (m.Shape + 3) / (m.Shape * (m.Shape + 1)) }
+
+// PDF is the density; +Inf at 0 for k < 1.
+func (m Gamma) PDF(x float64) float64 { return m.d.pdf(math.Abs(x)/m.Scale) / m.Scale }
+
+// LogPDF is its natural logarithm.
+func (m Gamma) LogPDF(x float64) float64 {
+	return m.d.logPDF(math.Abs(x)/m.Scale) - math.Log(m.Scale)
+}
+
+// CDF is the distribution function, by the incomplete gamma function.
+func (m Gamma) CDF(x float64) float64 { return mirrorCDF(m.Shape, math.Abs(x)/m.Scale, x) }
 
 // Quantile inverts CDF, 0 < p < 1.
-func (m Gamma) Quantile(p float64) float64 {
-	if p < 0.5 {
-		u := math.Erfcinv(2 * p)
-		return -m.Scale * u * u
-	}
-	u := math.Erfcinv(2 * (1 - p))
-	return m.Scale * u * u
-}
+func (m Gamma) Quantile(p float64) float64 { return m.Scale * mirrorQuantile(m.Shape, 1, p) }
 
 // Support is the real line.
 func (Gamma) Support() (lo, hi float64) { return math.Inf(-1), math.Inf(1) }
 
-// LogConcave is false: the density is infinite at 0.
-func (Gamma) LogConcave() bool { return false }
+// Even is true.
+func (Gamma) Even() bool { return true }
 
-// Entropy is that of the gamma density of shape 1/2 plus one bit for the sign.
+// LogConcave is true for k = 1 only: below it the density is infinite at 0,
+// above it has two peaks.
+func (m Gamma) LogConcave() bool { return m.Shape == 1 }
+
+// Entropy is that of the one-sided gamma density plus one bit for the sign.
 func (m Gamma) Entropy() float64 {
-	const psiHalf = -1.9635100260214234794 // digamma(1/2) = -gamma - 2 ln 2
-	nats := 0.5 + math.Log(m.Scale) + math.Log(math.Sqrt(math.Pi)) + 0.5*psiHalf + math.Ln2
-	return nats / math.Ln2
+	k := m.Shape
+	l, _ := math.Lgamma(k)
+	return (k+math.Log(m.Scale)+l+(1-k)*mathext.Digamma(k))/math.Ln2 + 1
 }
 
-// Cell integrates in u = sqrt(x/t), where the density is smooth.
-func (m Gamma) Cell(a, b float64) (p, off, about float64) { return mirrorCell(a, b, m.half) }
-
-func (m Gamma) half(a, b float64) (p, off, about float64) {
-	ua := math.Sqrt(a / m.Scale)
-	far := ua + 45/(ua+math.Sqrt(ua*ua+45))
-	w := far - ua
-	if !math.IsInf(b, 1) {
-		w = math.Min(w, (b-a)/m.Scale/(math.Sqrt(b/m.Scale)+ua))
-	}
-	edge := math.Exp(-ua*ua) / math.Sqrt(math.Pi)
-	p, off, about = cellSum(0, w, 2/(1+ua/2),
-		func(u float64) float64 { return math.Exp(-u * (2*ua + u)) },
-		func(u float64) float64 { return u * (2*ua + u) })
-	return p * edge, off * m.Scale, about * edge * m.Scale * m.Scale
+// Cell integrates by quadrature, by a series next to 0.
+func (m Gamma) Cell(a, b float64) (prob, offset, about float64) {
+	return scaledCell(&m.d, m.Scale, a, b)
 }
 
 var _ Model = Gamma{}

@@ -2,17 +2,28 @@ package model
 
 import "math"
 
-// Laplacian is exp(-|x|/b)/(2b), rms = b sqrt 2.
+// Laplacian is exp(-|x|/b)/(2b), rms = b sqrt 2, kurtosis 6.
 type Laplacian struct{ Scale float64 } // b
 
 // Name is "laplacian".
 func (Laplacian) Name() string { return "laplacian" }
 
+// Parameters are the shape, 1 by convention, and b.
+func (m Laplacian) Parameters() (shape, scale float64) { return 1, m.Scale }
+
 // RMS is b sqrt 2.
-func (m Laplacian) RMS() float64 { return m.Scale * sqrt2 }
+func (m Laplacian) RMS() float64 { return m.Scale * math.Sqrt2 }
+
+// Kurtosis is 6.
+func (Laplacian) Kurtosis() float64 { return 6 }
 
 // PDF is the density.
 func (m Laplacian) PDF(x float64) float64 { return math.Exp(-math.Abs(x)/m.Scale) / (2 * m.Scale) }
+
+// LogPDF is its natural logarithm.
+func (m Laplacian) LogPDF(x float64) float64 {
+	return -math.Abs(x)/m.Scale - math.Ln2 - math.Log(m.Scale)
+}
 
 // CDF is the distribution function.
 func (m Laplacian) CDF(x float64) float64 {
@@ -33,38 +44,29 @@ func (m Laplacian) Quantile(p float64) float64 {
 // Support is the real line.
 func (Laplacian) Support() (lo, hi float64) { return math.Inf(-1), math.Inf(1) }
 
+// Even is true.
+func (Laplacian) Even() bool { return true }
+
 // LogConcave is true.
 func (Laplacian) LogConcave() bool { return true }
 
 // Entropy is log2(2 e b).
 func (m Laplacian) Entropy() float64 { return math.Log2(2 * math.E * m.Scale) }
 
-// Cell integrates in closed form where the cell is wide, by quadrature where
-// differences would cancel.
-func (m Laplacian) Cell(a, b float64) (p, off, about float64) {
+// Cell is in closed form.
+func (m Laplacian) Cell(a, b float64) (prob, offset, about float64) {
 	return mirrorCell(a, b, m.half)
 }
 
-func (m Laplacian) half(a, b float64) (p, off, about float64) {
-	w := (b - a) / m.Scale
+func (m Laplacian) half(a, width float64) moments {
 	edge := math.Exp(-a/m.Scale) / 2
-	if w < 4 {
-		p, off, about = cellSum(0, w, 4, func(u float64) float64 { return math.Exp(-u) }, func(u float64) float64 { return u })
-	} else {
-		q, wq := math.Exp(-w), 0.0
-		if q > 0 {
-			wq = w * q
-		}
-		p = 1 - q
-		off = 1 - wq/p
-		// E x^2 = (2 - e^-w (w^2 + 2w + 2)) / p
-		second := 2.0
-		if q > 0 {
-			second = 2 - q*(w*w+2*w+2)
-		}
-		about = second - p*off*off
+	if math.IsInf(width, 1) {
+		return moments{edge, m.Scale, edge * m.Scale * m.Scale}
 	}
-	return p * edge, off * m.Scale, about * edge * m.Scale * m.Scale
+	w := width / m.Scale
+	area, centroid, variance := fallCell(w)
+	p := edge * area * w
+	return moments{p, centroid * width, p * variance * width * width}
 }
 
 var _ Model = Laplacian{}

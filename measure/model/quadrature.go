@@ -1,65 +1,70 @@
 package model
 
-import "math"
+import "gonum.org/v1/gonum/integrate/quad"
 
-// Gauss-Legendre nodes and weights on [-1, 1], 20 points, positive half.
-// Source: M. Abramowitz, I. Stegun, Handbook of Mathematical Functions,
-// Table 25.4; recomputed at start-up by Newton's method on the recurrence.
-var nodes, weights = legendre(20)
+// rule is a Gauss-Legendre rule on [0, 1].
+type rule struct{ x, w []float64 }
 
-// legendre computes the nodes and weights of n points.
-func legendre(n int) (x, w []float64) {
-	for i := range n {
-		z := math.Cos(math.Pi * (float64(i) + 0.75) / (float64(n) + 0.5))
-		var d float64
-		for range 100 {
-			p0, p1 := 1.0, z
-			for k := 2; k <= n; k++ {
-				p0, p1 = p1, (float64(2*k-1)*z*p1-float64(k-1)*p0)/float64(k)
-			}
-			d = float64(n) * (z*p1 - p0) / (z*z - 1)
-			step := p1 / d
-			z -= step
-			if math.Abs(step) < 1e-16 {
-				break
-			}
-		}
-		x, w = append(x, z), append(w, 2/((1-z*z)*d*d))
-	}
-	return x, w
+// The rules in use; wider panels take more nodes.
+var rules = [...]rule{legendre(4), legendre(6), legendre(10), legendre(16)}
+
+func legendre(n int) rule {
+	r := rule{make([]float64, n), make([]float64, n)}
+	quad.Legendre{}.FixedLocations(r.x, r.w, 0, 1)
+	return r
 }
 
-// cellSum integrates over [a, b], in panels no wider than width, the weight
-// f(x, x-a) given per node as the position u in the panel's own variable. to
-// maps u to the distance from the cell's edge; it returns probability,
-// centroid less edge and second moment about the centroid. All terms are
-// positive but for the centring, so that no digits are lost.
-func cellSum(a, b, width float64, density func(u float64) float64, to func(u float64) float64) (p, off, about float64) {
-	panels := max(1, int(math.Ceil((b-a)/width)))
-	h := (b - a) / float64(panels) / 2
-	var s0, s1, s2 float64
-	for i := range panels {
-		mid := a + h*float64(2*i+1)
-		for j, z := range nodes {
-			u := mid + h*z
-			f := weights[j] * density(u)
-			x := to(u)
-			s0 += f
-			s1 += f * x
-			s2 += f * x * x
-		}
+// moments are those of a cell put together from panels: probability, centroid
+// less the cell's anchor, second moment about the centroid. Every term is
+// positive, so that no digits are lost.
+type moments struct{ p, off, about float64 }
+
+func (m *moments) add(p, off, about float64) {
+	if p == 0 {
+		return
+	}
+	t := m.p + p
+	d := off - m.off
+	m.about += about + m.p*(p/t)*d*d
+	m.off += d * (p / t)
+	m.p = t
+}
+
+// panel adds the integral of f over [at, at+h] to m; f takes the distance from
+// the cell's anchor, as at does.
+func (m *moments) panel(r *rule, at, h float64, f func(u float64) float64) {
+	var w [16]float64
+	var s0, s1 float64
+	for i, x := range r.x {
+		w[i] = r.w[i] * f(at+h*x)
+		s0 += w[i]
+		s1 += w[i] * x
 	}
 	if s0 == 0 {
-		return 0, to((a + b) / 2), 0
+		return
 	}
-	off = s1 / s0
-	for i := range panels {
-		mid := a + h*float64(2*i+1)
-		for j, z := range nodes {
-			u := mid + h*z
-			x := to(u) - off
-			about += weights[j] * density(u) * x * x
-		}
+	mid := s1 / s0
+	var s2 float64
+	for i, x := range r.x {
+		s2 += w[i] * (x - mid) * (x - mid)
 	}
-	return s0 * h, off, about * h
+	m.add(s0*h, at+h*mid, s2*h*h*h)
+}
+
+// mirrorCell evaluates a cell of an even density by the moments of half, those
+// of the stretch from a >= 0 of width w, counted from a. A cell that straddles
+// 0 is put together from its halves.
+func mirrorCell(a, b float64, half func(a, w float64) moments) (p, off, about float64) {
+	switch {
+	case a >= 0:
+		m := half(a, b-a)
+		return m.p, m.off, m.about
+	case b <= 0:
+		m := half(-b, b-a)
+		return m.p, -m.off, m.about
+	}
+	m, r := half(0, -a), half(0, b)
+	m.off = -m.off
+	m.add(r.p, r.off, r.about)
+	return m.p, m.off, m.about
 }
