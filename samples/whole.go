@@ -1,6 +1,7 @@
 package samples
 
 import (
+	"bufio"
 	"errors"
 	"fmt"
 	"io"
@@ -64,7 +65,11 @@ func WriteFile(path string, fill func(io.Writer) error) error {
 	if err != nil {
 		return err
 	}
-	if err := fill(w); err != nil {
+	b := bufio.NewWriter(w)
+	if err = fill(b); err == nil {
+		err = b.Flush()
+	}
+	if err != nil {
 		w.abort()
 		return &Error{path, fmt.Errorf("cannot be written: %w", plain(err))}
 	}

@@ -74,7 +74,7 @@ func (j *job) prepare() (err error) {
 		j.did("DC of %s removed", list(v.dc))
 	}
 	if p.Rate != 0 && p.Rate != i.Rate {
-		if j.filter, err = newFilter(i.Rate, p.Rate); err != nil {
+		if j.filter, err = newFilter(i.Rate, p.Rate, v.channels); err != nil {
 			return err
 		}
 		j.did("resampled from %d to %d Hz (pass band to %.0f Hz, stop band -100 dB from %.0f Hz)", i.Rate, p.Rate,

@@ -13,7 +13,7 @@ const (
 	passEdge    = 0.90
 )
 
-// maxTaps bounds the filter, 32 MB.
+// maxTaps bounds the filter, and the input that it needs at a time: 32 MB each.
 const maxTaps = 1 << 22
 
 // filter is a polyphase interpolator by up and decimator by down: output m is
@@ -25,17 +25,17 @@ type filter struct {
 	phases   [][]float64
 }
 
-// newFilter designs for a change of rate in Hz.
-func newFilter(from, to int) (*filter, error) {
+// newFilter designs for a change of rate in Hz of so many channels.
+func newFilter(from, to, channels int) (*filter, error) {
 	g := gcd(from, to)
 	f := &filter{up: int64(to / g), down: int64(from / g)}
 	// The prototype runs at from*up; widths and edges in radians a sample there.
 	nyquist := math.Pi * float64(min(from, to)) / (float64(from) * float64(f.up))
 	width := nyquist * (1 - passEdge)
 	n := (attenuation-7.95)/(2.285*width) + 1
-	if n+float64(2*f.up) > maxTaps {
-		return nil, fmt.Errorf("from %d to %d Hz is %d/%d, which needs a filter of %.0f million taps: choose a rate in a simpler ratio",
-			from, to, f.up, f.down, n/1e6)
+	if n+float64(2*f.up) > maxTaps || n/float64(f.up)*float64(channels) > maxTaps {
+		return nil, fmt.Errorf("from %d to %d Hz is %d/%d, which needs a filter of %.2g taps on %d channels: choose a rate in a simpler ratio",
+			from, to, f.up, f.down, n, channels)
 	}
 	half := int64(math.Ceil(n / 2)) // the prototype is h[-half] ... h[half]
 	h := kaiser(half, nyquist*(1+passEdge)/2)

@@ -27,7 +27,7 @@ func TestFilterResponse(t *testing.T) {
 		// (Oppenheim and Schafer, section 7.5.3).
 		{48000, 8000, 855}, {48000, 16000, 429}, {44100, 16000, 394}, {8000, 48000, 143}, {16000, 8000, 286}, {44100, 48000, 143}, {11025, 8000, 197},
 	} {
-		f, err := newFilter(c.from, c.to)
+		f, err := newFilter(c.from, c.to, 1)
 		if err != nil {
 			t.Fatal(err)
 		}
@@ -62,8 +62,14 @@ func TestBesselI0(t *testing.T) {
 // TestAbsurdRatios are refused before memory is taken.
 func TestAbsurdRatios(t *testing.T) {
 	for _, c := range [][2]int{{44100, 44101}, {999983, 999979}, {1_000_000, 999_983}} {
-		if f, err := newFilter(c[0], c[1]); err == nil {
+		if f, err := newFilter(c[0], c[1], 1); err == nil {
 			t.Errorf("%d to %d Hz accepted with %d phases of %d taps", c[0], c[1], f.up, f.taps)
 		}
+	}
+	if _, err := newFilter(1_000_000, 100, 1); err != nil {
+		t.Error(err)
+	}
+	if _, err := newFilter(1_000_000, 100, 256); err == nil {
+		t.Error("256 channels of a million taps accepted")
 	}
 }

@@ -105,7 +105,7 @@ func TestResampleBlocks(t *testing.T) {
 		x[i] = math.Round(16384*math.Sin(float64(i*i%7919))) / 32768
 	}
 	r, _ := apply1(t, record(t, 44100, samples.Depth16, x), Plan{Rate: 16000})
-	f, _ := newFilter(44100, 16000)
+	f, _ := newFilter(44100, 16000, 1)
 	got := all(t, r)[0]
 	for _, m := range []int{0, 1, 23770, 23771, 23772, 23780, 47543, len(got) - 1} {
 		at := int64(m) * f.down
@@ -221,7 +221,7 @@ func TestRefused(t *testing.T) {
 
 func BenchmarkResample48to8(b *testing.B) {
 	v := newView(record(b, 48000, samples.Depth16, tone(1<<20, 48000, 440, 0)), "", 0, 1<<20)
-	f, err := newFilter(48000, 8000)
+	f, err := newFilter(48000, 8000, 1)
 	if err != nil {
 		b.Fatal(err)
 	}
