@@ -25,22 +25,7 @@ func EntropyData(h Histogram, opt EntropyOptions) (Solution, error) {
 	if err := opt.check(); err != nil {
 		return Solution{}, err
 	}
-	shapes := codedShapes(h, opt)
-	starts := len(shapes)
-	solve := func(lambda float64) Solution {
-		var best Solution
-		won := 0
-		for i, c := range shapes {
-			if s := c.solve(h, lambda); i == 0 || s.MSE+lambda*s.Entropy < best.MSE+lambda*best.Entropy {
-				best, won = s, i
-			}
-		}
-		if len(best.Values) > 64 { // the shapes hardly differ: go on with one
-			shapes = shapes[won : won+1]
-		}
-		best.Starts, best.Proof, best.Aim = starts, Local, lambda
-		return best
-	}
+	solve := codedSolver(h, opt, true)
 	if opt.Rate == 0 {
 		return solve(opt.Lambda), nil
 	}
@@ -50,6 +35,27 @@ func EntropyData(h Histogram, opt EntropyOptions) (Solution, error) {
 		return solve(1), nil
 	}
 	return atRate(opt.Rate, power, solve), nil
+}
+
+// codedSolver returns the design for a price; fine: ends moved until none
+// helps, otherwise rounds from the shortest path only.
+func codedSolver(h Histogram, opt EntropyOptions, fine bool) func(lambda float64) Solution {
+	shapes := codedShapes(h, opt)
+	starts := len(shapes)
+	return func(lambda float64) Solution {
+		var best Solution
+		won := 0
+		for i, c := range shapes {
+			if s := c.solve(h, lambda, fine); i == 0 || s.MSE+lambda*s.Entropy < best.MSE+lambda*best.Entropy {
+				best, won = s, i
+			}
+		}
+		if len(best.Values) > 64 { // the shapes hardly differ: go on with one
+			shapes = shapes[won : won+1]
+		}
+		best.Starts, best.Proof, best.Aim = starts, Local, lambda
+		return best
+	}
 }
 
 // codedShapes prepares the problem, for mirror tables once with a level and
@@ -116,7 +122,7 @@ func (p *coded) cost(i, j int) float64 {
 }
 
 // solve designs for one lambda; whole is the histogram before folding.
-func (p *coded) solve(whole Histogram, lambda float64) Solution {
+func (p *coded) solve(whole Histogram, lambda float64, fine bool) Solution {
 	p.lambda = lambda
 	grid := p.grid(math.Sqrt(6*lambda/math.Ln2) / 8)
 	window := 160
@@ -128,6 +134,11 @@ func (p *coded) solve(whole Histogram, lambda float64) Solution {
 		edges = p.fewer(grid, window)
 	}
 	edges, rounds := p.descend(edges)
+	if fine {
+		var more int
+		edges, more = p.shift(edges)
+		rounds += more
+	}
 	s := Solution{Rounds: rounds}
 	s.Values, s.Thresholds = p.table(edges)
 	if p.sides == 2 {
@@ -202,8 +213,7 @@ func thinned(grid []int, n int) []int {
 	return out
 }
 
-// descend repeats nearest-by-price cells and centroids while that helps, then
-// moves all ends together by ever smaller steps.
+// descend repeats nearest-by-price cells and centroids while that helps.
 func (p *coded) descend(edges []int) ([]int, int) {
 	rounds, now := 0, pathCost(p, edges)
 	for rounds < 30 {
@@ -215,6 +225,12 @@ func (p *coded) descend(edges []int) ([]int, int) {
 		}
 		edges, now = next, e
 	}
+	return edges, rounds
+}
+
+// shift moves all ends together by ever smaller steps while that helps.
+func (p *coded) shift(edges []int) ([]int, int) {
+	rounds, now := 0, pathCost(p, edges)
 	for shift := 4; shift < 20; {
 		rounds++
 		ends, finest := p.around(edges, shift)
