@@ -9,6 +9,7 @@ func commands() []*cobra.Command {
 		compareCommand(),
 		designCommand(),
 		inspectCommand(),
+		sweepCommand(),
 		exportCommand(),
 		reportCommand(),
 		abCommand(),
