@@ -9,6 +9,7 @@ func commands() []*cobra.Command {
 		compareCommand(),
 		designCommand(),
 		inspectCommand(),
+		bitsCommand(),
 		sweepCommand(),
 		exportCommand(),
 		reportCommand(),
