@@ -1,12 +1,53 @@
 package flac
 
 import (
+	"errors"
 	"fmt"
+	"io"
 
 	"github.com/mewkiz/flac/frame"
 
 	"fewbits/samples/wave"
 )
+
+// agrees checks a block's header against the stream's.
+func (d *decoder) agrees(f *frame.Frame) error {
+	switch {
+	case f.BitsPerSample != d.info.BitsPerSample:
+		return fmt.Errorf("a block of %d bits in a stream of %d", f.BitsPerSample, d.info.BitsPerSample)
+	case f.Channels.Count() != int(d.info.NChannels):
+		return fmt.Errorf("a block of %d channels in a stream of %d", f.Channels.Count(), d.info.NChannels)
+	case f.SampleRate != 0 && f.SampleRate != d.info.SampleRate:
+		return fmt.Errorf("a block at %d Hz in a stream at %d Hz", f.SampleRate, d.info.SampleRate)
+	case f.BlockSize == 0:
+		return errors.New("a block of 65536 samples; 65535 is the most")
+	}
+	return nil
+}
+
+// broken settles a block that could not be decoded: the end of the file, or
+// damage within it.
+func (d *decoder) broken(at int64, err error) error {
+	left := d.size - at
+	most := int64(d.info.BlockSizeMax)*int64(d.info.NChannels)*4 + 1<<10
+	switch {
+	case d.in.err != nil:
+		return d.in.err
+	case d.f.Frames == 0 && left <= 0:
+		return d.fault(at, "no samples")
+	case left <= 0:
+		d.ended = true
+	case d.f.Frames > 0 && left < most && (errors.Is(err, io.EOF) || errors.Is(err, io.ErrUnexpectedEOF)):
+		d.ended = true
+		d.warn(at, "the last block is cut off and left out; %s", complete)
+	case d.f.Frames > 0 && errors.Is(err, frame.ErrInvalidSync) && d.info.NSamples == 0 && d.known() && d.matches():
+		d.ended = true
+		d.warn(at, "%d bytes behind the last block are left out", left)
+	default:
+		return d.fault(at, "block at sample %d: %v", d.f.Frames, err)
+	}
+	return nil
+}
 
 // write sums a decoded block and writes it out.
 func (d *decoder) write(at int64, f *frame.Frame) error {

@@ -1,9 +1,7 @@
 package flac
 
 import (
-	"bufio"
 	"crypto/md5"
-	"errors"
 	"fmt"
 	"hash"
 	"io"
@@ -139,45 +137,6 @@ func (d *decoder) block() error {
 	return d.write(at, f)
 }
 
-// agrees checks a block's header against the stream's.
-func (d *decoder) agrees(f *frame.Frame) error {
-	switch {
-	case f.BitsPerSample != d.info.BitsPerSample:
-		return fmt.Errorf("a block of %d bits in a stream of %d", f.BitsPerSample, d.info.BitsPerSample)
-	case f.Channels.Count() != int(d.info.NChannels):
-		return fmt.Errorf("a block of %d channels in a stream of %d", f.Channels.Count(), d.info.NChannels)
-	case f.SampleRate != 0 && f.SampleRate != d.info.SampleRate:
-		return fmt.Errorf("a block at %d Hz in a stream at %d Hz", f.SampleRate, d.info.SampleRate)
-	case f.BlockSize == 0:
-		return errors.New("a block of 65536 samples; 65535 is the most")
-	}
-	return nil
-}
-
-// broken settles a block that could not be decoded: the end of the file, or
-// damage within it.
-func (d *decoder) broken(at int64, err error) error {
-	left := d.size - at
-	most := int64(d.info.BlockSizeMax)*int64(d.info.NChannels)*4 + 1<<10
-	switch {
-	case d.in.err != nil:
-		return d.in.err
-	case d.f.Frames == 0 && left <= 0:
-		return d.fault(at, "no samples")
-	case left <= 0:
-		d.ended = true
-	case d.f.Frames > 0 && left < most && (errors.Is(err, io.EOF) || errors.Is(err, io.ErrUnexpectedEOF)):
-		d.ended = true
-		d.warn(at, "the last block is cut off and left out; %s", complete)
-	case d.f.Frames > 0 && errors.Is(err, frame.ErrInvalidSync) && d.info.NSamples == 0 && d.known() && d.matches():
-		d.ended = true
-		d.warn(at, "%d bytes behind the last block are left out", left)
-	default:
-		return d.fault(at, "block at sample %d: %v", d.f.Frames, err)
-	}
-	return nil
-}
-
 func (d *decoder) warn(at int64, format string, args ...any) {
 	d.f.Warnings = append(d.f.Warnings, fmt.Sprintf("byte %d: ", at)+fmt.Sprintf(format, args...))
 }
@@ -199,33 +158,4 @@ func (d *decoder) settle() (*wave.Format, error) {
 		return nil, d.fault(0, "the decoded audio does not match the file's checksum")
 	}
 	return &d.f, nil
-}
-
-// counter is a buffered reader that knows its place in the file.
-type counter struct {
-	r    *bufio.Reader
-	src  *io.SectionReader
-	base int64
-	err  error // of reading the file, but for its end
-}
-
-func newCounter(r io.ReaderAt, start, size int64) *counter {
-	c := &counter{src: io.NewSectionReader(r, start, max(0, size-start)), base: start}
-	c.r = bufio.NewReaderSize(c, 1<<16)
-	return c
-}
-
-// Read passes on and remembers a failure.
-func (c *counter) Read(b []byte) (int, error) {
-	n, err := c.src.Read(b)
-	if err != nil && err != io.EOF {
-		c.err = err
-	}
-	return n, err
-}
-
-// at is the offset of the next byte to be decoded.
-func (c *counter) at() int64 {
-	read, _ := c.src.Seek(0, io.SeekCurrent)
-	return c.base + read - int64(c.r.Buffered())
 }

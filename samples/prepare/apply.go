@@ -4,6 +4,7 @@ import (
 	"errors"
 	"fmt"
 	"math"
+	"strings"
 
 	"fewbits/samples"
 )
@@ -89,14 +90,11 @@ func (j *job) prepare() (err error) {
 
 // list shows one figure a channel.
 func list(x []float64) string {
-	s := ""
+	shown := make([]string, len(x))
 	for c, v := range x {
-		if c > 0 {
-			s += ", "
-		}
-		s += fmt.Sprintf("%+.3g", v)
+		shown[c] = fmt.Sprintf("%+.3g", v)
 	}
-	return s
+	return strings.Join(shown, ", ")
 }
 
 // make gives the new recording: made as it is read, but for a change of rate.

@@ -1,7 +1,6 @@
 package wave
 
 import (
-	"encoding/binary"
 	"math"
 )
 
@@ -13,7 +12,7 @@ func (e Encoding) Words(dst [][]int16, src []byte) {
 	case PCM8:
 		each(dst, src, 1, func(b []byte) int16 { return (int16(b[0]) - 128) << 8 })
 	case PCM16:
-		each(dst, src, 2, func(b []byte) int16 { return int16(binary.LittleEndian.Uint16(b)) })
+		each(dst, src, 2, func(b []byte) int16 { return int16(le.Uint16(b)) })
 	case MuLaw:
 		each(dst, src, 1, func(b []byte) int16 { return muWords[b[0]] })
 	case ALaw:
@@ -26,7 +25,6 @@ func (e Encoding) Words(dst [][]int16, src []byte) {
 // Reals converts interleaved samples to real numbers, full scale = 1.0, one
 // plane a channel, all of the same length; src holds as many frames.
 func (e Encoding) Reals(dst [][]float64, src []byte) {
-	le := binary.LittleEndian
 	switch e {
 	case PCM8:
 		each(dst, src, 1, func(b []byte) float64 { return (float64(b[0]) - 128) / (1 << 7) })
@@ -64,7 +62,6 @@ func each[T any](dst [][]T, src []byte, size int, value func([]byte) T) {
 // NotFinite gives the index of the first NaN or infinity among stored float
 // samples, -1 where there is none; other encodings have none.
 func (e Encoding) NotFinite(src []byte) int {
-	le := binary.LittleEndian
 	switch e {
 	case Float32:
 		for i := 0; i+4 <= len(src); i += 4 {

@@ -1,7 +1,5 @@
 package wave
 
-import "encoding/binary"
-
 // samples takes the first data chunk, whose header is at an offset.
 func (w *walker) samples(at int64, claim uint64) (int64, error) {
 	body := at + 8
@@ -41,7 +39,7 @@ func (w *walker) chained(at int64) (bool, error) {
 		if err != nil || len(b) < 8 || !plausible(b[:4]) || n > maxChunks {
 			return false, err
 		}
-		if at, err = w.after(at+8, int64(binary.LittleEndian.Uint32(b[4:]))); err != nil {
+		if at, err = w.after(at+8, int64(le.Uint32(b[4:]))); err != nil {
 			return false, err
 		}
 	}
@@ -77,7 +75,7 @@ func (w *walker) search(from int64, id string) (int64, error) {
 			return -1, err
 		}
 		for i := 0; i+8 <= len(b) && i < block; i++ {
-			if string(b[i:i+4]) == id && w.credible(at+int64(i), id, binary.LittleEndian.Uint32(b[i+4:])) {
+			if string(b[i:i+4]) == id && w.credible(at+int64(i), id, le.Uint32(b[i+4:])) {
 				return at + int64(i), nil
 			}
 		}

@@ -2,7 +2,6 @@ package wave
 
 import (
 	"bytes"
-	"encoding/binary"
 	"fmt"
 )
 
@@ -33,7 +32,6 @@ func parseFmt(at int64, b []byte) (header, error) {
 	if len(b) < 16 {
 		return header{}, fault(at, damaged, "the fmt chunk has %d bytes and needs 16", len(b))
 	}
-	le := binary.LittleEndian
 	h := header{
 		at: at, tag: le.Uint16(b), channels: int(le.Uint16(b[2:])), rate: int64(le.Uint32(b[4:])),
 		align: int(le.Uint16(b[12:])), bits: int(le.Uint16(b[14:])),

@@ -1,7 +1,6 @@
 package wave
 
 import (
-	"encoding/binary"
 	"fmt"
 	"math"
 )
@@ -11,7 +10,7 @@ func FromWords(dst []byte, planes [][]int16) {
 	for c, plane := range planes {
 		at := 2 * c
 		for _, v := range plane {
-			binary.LittleEndian.PutUint16(dst[at:], uint16(v))
+			le.PutUint16(dst[at:], uint16(v))
 			at += 2 * len(planes)
 		}
 	}
@@ -22,7 +21,6 @@ func FromWords(dst []byte, planes [][]int16) {
 // are clamped and counted. NaN and infinity, also by overflow of Float32, are
 // an error. It panics for other encodings.
 func (e Encoding) FromReals(dst []byte, planes [][]float64) (clipped int64, err error) {
-	le := binary.LittleEndian
 	switch e {
 	case PCM16:
 		return fixed(dst, planes, 15, 2, func(b []byte, v int32) { le.PutUint16(b, uint16(v)) })

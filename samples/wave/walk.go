@@ -1,7 +1,6 @@
 package wave
 
 import (
-	"encoding/binary"
 	"fmt"
 	"io"
 	"math"
@@ -79,7 +78,7 @@ func (w *walker) open() (int64, error) {
 	}
 	w.f.Container = map[string]string{"RIFF": "WAV", "RF64": "RF64", "BW64": "BW64"}[id]
 	if id == "RIFF" {
-		w.checkRiffSize(binary.LittleEndian.Uint32(b[4:]))
+		w.checkRiffSize(le.Uint32(b[4:]))
 	}
 	return 12, nil
 }
@@ -110,7 +109,7 @@ func (w *walker) chunk(at int64) (int64, error) {
 	if len(b) < 8 || !plausible(b[:4]) {
 		return w.lost(at, "%d bytes that are no chunk", w.size-at)
 	}
-	id, claim := string(b[:4]), uint64(binary.LittleEndian.Uint32(b[4:]))
+	id, claim := string(b[:4]), uint64(le.Uint32(b[4:]))
 	if wide, ok := w.wide[id]; ok && claim == streamed {
 		claim = wide
 	}
@@ -167,47 +166,4 @@ func (w *walker) after(body, size int64) (int64, error) {
 		return end, nil
 	}
 	return end + 1, nil
-}
-
-// sizes reads the ds64 chunk of RF64 and BW64 (EBU Tech 3306, section 4); in
-// plain RIFF it means nothing.
-func (w *walker) sizes(at int64, claim uint64) error {
-	if w.f.Container == "WAV" {
-		return nil
-	}
-	b, err := w.read(at, int64(min(claim, 28+12*64)))
-	if err != nil {
-		return err
-	}
-	if len(b) < 24 {
-		return fault(at, damaged, "the ds64 chunk has %d bytes and needs 24", len(b))
-	}
-	w.wide["data"] = binary.LittleEndian.Uint64(b[8:])
-	if len(b) < 28 {
-		return nil
-	}
-	entries := binary.LittleEndian.Uint32(b[24:])
-	for b = b[28:]; entries > 0 && len(b) >= 12; entries-- {
-		w.wide[string(b[:4])] = binary.LittleEndian.Uint64(b[4:])
-		b = b[12:]
-	}
-	return nil
-}
-
-// format takes the first fmt chunk.
-func (w *walker) format(at int64, claim uint64) error {
-	if w.hasFmt {
-		w.f.warn(at-8, "a second fmt chunk is left out")
-		return nil
-	}
-	b, err := w.read(at, int64(min(claim, 40)))
-	if err != nil {
-		return err
-	}
-	if claim >= 16 && len(b) < 16 {
-		return fault(at+int64(len(b)), truncate, "the file ends within its fmt chunk")
-	}
-	w.hasFmt = true
-	w.fmt, err = parseFmt(at, b)
-	return err
 }

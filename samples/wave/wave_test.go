@@ -2,7 +2,6 @@ package wave
 
 import (
 	"bytes"
-	"encoding/binary"
 	"io"
 	"math"
 	"testing"
@@ -165,7 +164,7 @@ func TestRounding(t *testing.T) {
 		want := min(max(math.Round(x), -1<<15), 1<<15-1)
 		b := make([]byte, 2)
 		clipped, err := PCM16.FromReals(b, [][]float64{{x / (1 << 15)}})
-		if got := int16(binary.LittleEndian.Uint16(b)); err != nil || float64(got) != want || (clipped == 1) != (want != math.Round(x)) {
+		if got := int16(le.Uint16(b)); err != nil || float64(got) != want || (clipped == 1) != (want != math.Round(x)) {
 			t.Fatalf("%.17g: %d, %d clipped, %v", x, got, clipped, err)
 		}
 	})
@@ -192,7 +191,6 @@ func TestWordsStoreRead(t *testing.T) {
 // FuzzWalk: no file makes the walk panic, hang, or name samples that are not
 // there.
 func FuzzWalk(f *testing.F) {
-	le := binary.LittleEndian
 	head, _ := Header(PCM16, 8000, 1, 4)
 	f.Add(append(head, 1, 2, 3, 4, 5, 6, 7, 8))
 	float, _ := Header(Float32, 48000, 2, 1)
