@@ -1,10 +1,6 @@
 package model
 
-import (
-	"math"
-
-	"gonum.org/v1/gonum/mathext"
-)
+import "math"
 
 // Gamma is the two-sided gamma density |x|^(k-1) exp(-|x|/t) / (2 Gamma(k)
 // t^k), rms = t sqrt(k(k+1)), infinite at 0 for k < 1. Shape 1/2 is the speech
@@ -62,7 +58,7 @@ func (m Gamma) LogConcave() bool { return m.Shape == 1 }
 func (m Gamma) Entropy() float64 {
 	k := m.Shape
 	l, _ := math.Lgamma(k)
-	return (k+math.Log(m.Scale)+l+(1-k)*mathext.Digamma(k))/math.Ln2 + 1
+	return (k+math.Log(m.Scale)+l+(1-k)*digamma(k))/math.Ln2 + 1
 }
 
 // Cell integrates by quadrature, by a series next to 0.

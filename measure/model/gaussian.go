@@ -32,12 +32,9 @@ func (m Gaussian) LogPDF(x float64) float64 {
 // CDF is the distribution function.
 func (m Gaussian) CDF(x float64) float64 { return math.Erfc(-x/m.Scale/math.Sqrt2) / 2 }
 
-// Quantile inverts CDF, 0 < p < 1.
+// Quantile inverts CDF, 0 < p < 1; math.Erfcinv loses the tails' digits.
 func (m Gaussian) Quantile(p float64) float64 {
-	if p > 0.5 {
-		return m.Scale * math.Sqrt2 * math.Erfcinv(2*(1-p))
-	}
-	return -m.Scale * math.Sqrt2 * math.Erfcinv(2*p)
+	return m.Scale * math.Sqrt2 * mirrorQuantile(0.5, 0.5, p)
 }
 
 // Support is the real line.

@@ -81,6 +81,19 @@ func invertGamma(s, q float64) float64 {
 	return math.Exp(z)
 }
 
+// digamma is the logarithmic derivative of the gamma function, x > 0: its
+// recurrence up to 10, then the asymptotic series (Abramowitz, Stegun 6.3.5,
+// 6.3.18). The library's keeps 11 digits only.
+func digamma(x float64) float64 {
+	var sum float64
+	for ; x < 10; x++ {
+		sum -= 1 / x
+	}
+	q := 1 / (x * x)
+	series := q * (1./12 - q*(1./120-q*(1./252-q*(1./240-q*(1./132-q*(691./32760-q/12))))))
+	return sum + math.Log(x) - 0.5/x - series
+}
+
 // gammaGap is Q(s, y) - q, taken on the side that keeps digits, and whether y
 // lies below the solution.
 func gammaGap(s, y, q float64) (gap float64, below bool) {
