@@ -49,7 +49,7 @@ func (p *progress) step(s bench.Step) {
 		p.bar.SetCurrent(s.Done)
 		return
 	}
-	if p.bars == nil && now.Sub(p.said) >= quietFor && s.Done < s.Total {
+	if p.bars == nil && now.Sub(p.said) >= quietFor && s.Done > 0 && s.Done < s.Total {
 		p.said = now
 		spent := now.Sub(p.begun).Seconds()
 		rate := float64(s.Done) / spent

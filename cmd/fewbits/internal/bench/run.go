@@ -37,6 +37,9 @@ func Run(ctx context.Context, plan Plan) (*Results, *Traces, error) {
 		return nil, nil, err
 	}
 	e.collect(r, surveys, outcomes)
+	if err := e.optimism(r, surveys); err != nil {
+		return nil, nil, err
+	}
 	t, err := e.traces(r, surveys, outcomes, sets[0])
 	return r, t, err
 }
