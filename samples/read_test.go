@@ -97,3 +97,22 @@ func bytesOf(n int) []byte {
 	}
 	return b
 }
+
+// TestShrinks: a file that is cut while it is open gives an error, not samples.
+func TestShrinks(t *testing.T) {
+	path := put(t, "x.wav", riff(mono16, ck("data", four)))
+	r, err := Open(path)
+	if err != nil {
+		t.Fatal(err)
+	}
+	defer r.Close()
+	if err := os.Truncate(path, 46); err != nil {
+		t.Skipf("an open file cannot be cut here: %v", err)
+	}
+	words, reals := [][]int16{make([]int16, 4)}, [][]float64{make([]float64, 4)}
+	for _, err := range []error{r.ReadWords(words, 0), r.Read(reals, 0)} {
+		if err == nil || err.Error() != path+": byte 44: the file became shorter while it was read: run again when it is complete" {
+			t.Errorf("%v", err)
+		}
+	}
+}

@@ -92,6 +92,11 @@ func (d *decoder) fault(at int64, format string, args ...any) error {
 // open reads the stream's header.
 func (d *decoder) open() error {
 	start := d.start
+	// "fLaC", the mark of the first metadata block, its length: the library
+	// would read whatever else stands there, too.
+	if b, _ := d.in.r.Peek(8); len(b) < 8 || b[4]&0x7F != 0 || b[5] != 0 || b[6] != 0 || b[7] != 34 {
+		return d.fault(start, "no usable stream header")
+	}
 	stream, err := lib.New(d.in.r)
 	if err != nil {
 		return d.fault(start, "no usable stream header (%v)", err)

@@ -19,7 +19,7 @@ func (w *walker) samples(at int64, claim uint64) (int64, error) {
 			return body, err
 		}
 		w.f.warn(at+4, "the data chunk says 0 bytes, as streamed files do; all %d bytes to the end are taken as samples", left)
-	case claim == streamed && claim > uint64(left):
+	case asStreamed(claim) && claim > uint64(left):
 		w.f.warn(at+4, "the data chunk says %d bytes, as streamed files do; all %d bytes to the end are taken as samples", claim, left)
 	case claim > uint64(left):
 		w.f.warn(at+4, "the data chunk claims %d bytes but the file ends after %d; read to the end: get a complete copy if the tail matters", claim, left)
@@ -27,7 +27,7 @@ func (w *walker) samples(at int64, claim uint64) (int64, error) {
 		w.data = int64(claim)
 		return w.after(body, w.data)
 	}
-	w.data = left
+	w.data, w.endless = left, true
 	return -1, nil
 }
 
@@ -104,6 +104,7 @@ func (w *walker) settle() (*Format, error) {
 	if !w.hasData {
 		return nil, fault(w.size, truncate, "no data chunk up to the end of the file")
 	}
+	w.checkRiffSize()
 	f := &w.f
 	f.Encoding, f.Rate, f.Channels, f.ValidBits = e, int(w.fmt.rate), w.fmt.channels, w.fmt.validBits
 	f.DataStart = w.dataAt + 8

@@ -23,8 +23,10 @@ type walker struct {
 	fmt     header
 	hasFmt  bool
 	hasData bool
-	dataAt  int64 // offset of the data chunk's header
-	data    int64 // bytes of samples in the file
+	dataAt  int64  // offset of the data chunk's header
+	data    int64  // bytes of samples in the file
+	claim   uint32 // the RIFF header's size
+	endless bool   // the data chunk's size was no use
 	chunks  int
 }
 
@@ -77,20 +79,26 @@ func (w *walker) open() (int64, error) {
 		return 0, fault(8, convert, "this RIFF file holds %q and not WAVE", form)
 	}
 	w.f.Container = map[string]string{"RIFF": "WAV", "RF64": "RF64", "BW64": "BW64"}[id]
-	if id == "RIFF" {
-		w.checkRiffSize(le.Uint32(b[4:]))
-	}
+	w.claim = le.Uint32(b[4:])
 	return 12, nil
 }
 
-// checkRiffSize warns of an outer size that cannot be right. It decides nothing:
-// the chunks are followed to the end of the file.
-func (w *walker) checkRiffSize(claim uint32) {
-	switch {
-	case claim == 0 || claim == streamed:
+// asStreamed says whether a size is one that writers leave who cannot know it:
+// 0, or about 2 or 4 GiB less up to a page.
+func asStreamed(claim uint64) bool {
+	return claim == 0 || claim >= 1<<31-1<<12 && claim <= 1<<31 || claim >= 1<<32-1<<12 && claim <= streamed
+}
+
+// checkRiffSize warns of an outer size that cannot be right, where the data
+// chunk's does not tell as much. It decides nothing: the chunks are followed to
+// the end of the file.
+func (w *walker) checkRiffSize() {
+	switch claim := uint64(w.claim); {
+	case w.f.Container != "WAV" || w.endless:
+	case asStreamed(claim) && claim > uint64(w.size) || claim == 0:
 		w.f.warn(4, "the file says its size is %d, as streamed files do; it is read to its end", claim)
-	case int64(claim)+8 > w.size+1: // a missing last pad byte is harmless
-		w.f.warn(4, "the file says it has %d bytes but ends at %d; it may have been cut off", int64(claim)+8, w.size)
+	case claim+8 > uint64(w.size)+1: // a missing last pad byte is harmless
+		w.f.warn(4, "the file says it has %d bytes but ends at %d; it may have been cut off", claim+8, w.size)
 	}
 }
 
