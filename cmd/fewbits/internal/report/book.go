@@ -59,7 +59,7 @@ func open(r *bench.Results) *book {
 // figure is a design's pooled figure, NaN where there is none.
 func (b *book) figure(spec, name string) bench.Num {
 	if p := b.pooled[spec]; p != nil {
-		if v, ok := p.Figures[name]; ok {
+		if v, ok := p.Figures[name]; ok && v.Defined() {
 			return v
 		}
 	}

@@ -90,7 +90,7 @@ func (b *browser) do(t *testing.T, steps ...chromedp.Action[chromedp.Void]) {
 // ask evaluates a script expression.
 func ask[T any](t *testing.T, b *browser, expression string) T {
 	t.Helper()
-	v, err := chromedp.Run(b, chromedp.Evaluate[T](expression))
+	v, err := chromedp.Run(b, chromedp.Evaluate[T](expression, chromedp.EvalAwaitPromise))
 	if err != nil {
 		t.Fatalf("%s: %v", expression, err)
 	}
@@ -164,15 +164,17 @@ func tone(rate int, seconds float64) []byte {
 // TestInBrowser: the page works from the disk, asks for nothing but its audio,
 // and complains of nothing.
 func TestInBrowser(t *testing.T) {
-	r, traces := synthetic(3, 400)
+	r, traces := synthetic(5, 1500)
 	b := browse(t)
 	address := leave(t, r, traces)
+	b.prefer(t, "light")
 	b.do(t, chromedp.Navigate(address))
 	b.mu.Lock()
 	if len(b.requests) != 1 || b.requests[0] != address {
 		t.Errorf("loading asked for %q", b.requests)
 	}
 	b.mu.Unlock()
+	t.Run("widths", func(t *testing.T) { widths(t, b) })
 	t.Run("switches", func(t *testing.T) { switches(t, b) })
 	t.Run("key", func(t *testing.T) { keyEntries(t, b) })
 	t.Run("sorting", func(t *testing.T) { sorting(t, b, r) })
@@ -301,15 +303,16 @@ func playback(t *testing.T, b *browser) {
 	ask[bool](t, b, `(p => { p.volume = 0.1; p.play(); return true; })(document.getElementById('player'))`)
 	const seconds = `Number(document.getElementById('time-picture').dataset.seconds)`
 	const now = `document.getElementById('player').currentTime`
-	await(t, b, seconds+` > 0.3`)
-	first := ask[float64](t, b, seconds)
-	await(t, b, seconds+` > 0.6`)
-	gap := ask[float64](t, b, `new Promise(r => requestAnimationFrame(() => r(0))) && Math.abs(`+seconds+` - `+now+`)`)
-	if gap > 0.1 {
-		t.Errorf("the cursor is %g s from the sound", gap)
+	for _, at := range []string{"0.2", "0.6"} {
+		await(t, b, seconds+` > `+at)
+		// In the frame's turn after the page's own: what is seen then.
+		gap := ask[float64](t, b, `new Promise(r => requestAnimationFrame(() => r(Math.abs(`+seconds+` - `+now+`))))`)
+		if gap > 0.05 {
+			t.Errorf("past %s s the cursor is %g s from the sound", at, gap)
+		}
 	}
 	x := ask[float64](t, b, `Number(document.querySelector('#time-picture [data-part="cursor"]').getAttribute('d').match(/^M([\d.]+)/)[1])`)
-	if x <= timeLeft || x >= timeRight || first >= ask[float64](t, b, seconds) {
+	if x <= timeLeft+10 || x > timeRight {
 		t.Errorf("cursor at %g", x)
 	}
 	b.do(t, chromedp.Click(chromedp.CSS(`#hear label:has(input[value="be"])`)))

@@ -37,6 +37,9 @@ func HTML(w io.Writer, r *bench.Results, t *bench.Traces, o Options) error {
 	if t == nil {
 		t = &bench.Traces{}
 	}
+	if err := check(r, t); err != nil {
+		return err
+	}
 	p, err := compose(open(r), t, o)
 	if err != nil {
 		return err
@@ -61,7 +64,7 @@ type content struct {
 	Sets                          map[string]*set
 	Time                          *shown
 	Tracks                        []track
-	top                           float64 // of the SNR axis over time
+	low, top                      float64 // of the SNR axis over time
 	First, Second                 int
 	Audio                         bool
 	FirstAudio                    string
@@ -113,7 +116,8 @@ func (p *content) addTime(t *bench.Traces) {
 	if first == nil || len(t.Clips) == 0 {
 		return
 	}
-	p.Tracks, p.top = tracks(p.B, t), framesMax(t)
+	p.Tracks = tracks(p.B, t)
+	p.low, p.top = framesReach(t)
 	at := func(d *bench.Design) int {
 		return slices.IndexFunc(p.B.Designs, func(x bench.Design) bool { return x.Spec == d.Spec })
 	}

@@ -2,18 +2,321 @@ package report
 
 import (
 	"bytes"
+	"encoding/base64"
+	"encoding/xml"
+	"errors"
+	"html"
+	"io"
+	"math"
+	"os"
+	"path/filepath"
+	"regexp"
+	"strconv"
+	"strings"
 	"testing"
+
+	"pgregory.net/rapid"
+
+	"fewbits/cmd/fewbits/internal/bench"
 )
 
-// TestPageSize: 50 recordings and 12 designs stay below a megabyte.
-func TestPageSize(t *testing.T) {
-	r, traces := synthetic(50, 2000)
+func pageOf(t testing.TB, r *bench.Results, traces *bench.Traces) string {
+	t.Helper()
 	var out bytes.Buffer
 	if err := HTML(&out, r, traces, Options{Audio: true}); err != nil {
 		t.Fatal(err)
 	}
-	t.Logf("%d bytes", out.Len())
-	if out.Len() > 1e6 {
-		t.Errorf("%d bytes", out.Len())
+	return out.String()
+}
+
+// TestPageSize: 50 recordings and 12 designs stay below a megabyte.
+func TestPageSize(t *testing.T) {
+	r, traces := synthetic(50, 2000)
+	if n := len(pageOf(t, r, traces)); n > 1e6 {
+		t.Errorf("%d bytes", n)
+	}
+}
+
+var (
+	tableRow  = regexp.MustCompile(`(?s)<tr><th scope="row"[^>]*>(.*?)<td(.*?)(?:\n|</tbody>)`)
+	tableCell = regexp.MustCompile(`data-f="([^"]+)" data-v="([^"]+)"`)
+	picMark   = regexp.MustCompile(`data-design="([^"]+)" data-x="([^"]+)" data-y="([^"]+)"`)
+)
+
+// TestTablesEqualResults: what the tables carry reads back as the very numbers
+// of the results.
+func TestTablesEqualResults(t *testing.T) {
+	r, traces := synthetic(5, 50)
+	text := pageOf(t, r, traces)
+	b := open(r)
+	for id, of := range map[string]func(*bench.Pooled) bench.Figures{
+		"pooled":      func(p *bench.Pooled) bench.Figures { return p.Figures },
+		"pooled-rest": func(p *bench.Pooled) bench.Figures { return p.Figures },
+		"means":       func(p *bench.Pooled) bench.Figures { return p.ClipMeans },
+		"means-rest":  func(p *bench.Pooled) bench.Figures { return p.ClipMeans },
+	} {
+		rows := tableRow.FindAllStringSubmatch(between(t, text, `id="grid-`+id+`"`, "</table>"), -1)
+		if len(rows) != len(r.Designs) {
+			t.Fatalf("%s: %d rows", id, len(rows))
+		}
+		compared := 0
+		for _, row := range rows {
+			spec := html.UnescapeString(strings.ReplaceAll(row[1], "<wbr>", ""))
+			p := b.pooled[spec]
+			if p == nil {
+				t.Fatalf("%s: no design %q", id, spec)
+			}
+			for _, c := range tableCell.FindAllStringSubmatch(row[2], -1) {
+				want := float64(of(p)[c[1]])
+				switch c[1] {
+				case "interval":
+					want = float64(p.Interval[0])
+				case "behind":
+					want = float64(p.Behind[0])
+				}
+				if got, err := strconv.ParseFloat(c[2], 64); err != nil || got != want {
+					t.Errorf("%s %s %s: %q, want %v", id, spec, c[1], c[2], want)
+				}
+				compared++
+			}
+		}
+		if compared < 5*len(r.Designs) {
+			t.Errorf("%s: only %d numbers", id, compared)
+		}
+	}
+}
+
+// TestMarksEqualResults: every mark of the trade-off carries its design's
+// figures.
+func TestMarksEqualResults(t *testing.T) {
+	r, traces := synthetic(5, 50)
+	b := open(r)
+	for _, p := range tradeoffs(b, traces) {
+		marks := picMark.FindAllStringSubmatch(p.SVG(), -1)
+		if len(marks) != len(r.Designs) {
+			t.Errorf("%s: %d marks", p.Name, len(marks))
+		}
+		for _, m := range marks {
+			x, _ := strconv.ParseFloat(m[2], 64)
+			y, _ := strconv.ParseFloat(m[3], 64)
+			if wantX := b.cost(b.design[m[1]], p.Turn[1]); x != wantX || y != float64(b.figure(m[1], p.Turn[0])) {
+				t.Errorf("%s: %s at %v, %v", p.Name, m[1], x, y)
+			}
+		}
+	}
+}
+
+// TestTracksEqualTraces: the packed bytes are within half a step of the
+// traces, and undefined stays undefined.
+func TestTracksEqualTraces(t *testing.T) {
+	r, traces := synthetic(2, 100)
+	b := open(r)
+	for i, k := range tracks(b, traces) {
+		c := traces.Clips[i]
+		for j, d := range r.Designs {
+			packed, err := base64.StdEncoding.DecodeString(k.SNR[j])
+			if err != nil || len(packed) != len(c.Max) {
+				t.Fatalf("%d bytes, %v", len(packed), err)
+			}
+			for n, v := range c.SNR[d.Spec] {
+				got := float64(packed[n])/2 - 20
+				want := math.Max(-20, float64(v))
+				if packed[n] == undefined {
+					got = nan
+				}
+				if math.IsNaN(got) != math.IsNaN(float64(v)) || math.Abs(got-want) > 0.25+1e-9 {
+					t.Fatalf("%s step %d: %v, want %v", d.Spec, n, got, v)
+				}
+			}
+		}
+	}
+}
+
+func between(t *testing.T, text, from, to string) string {
+	t.Helper()
+	_, rest, ok := strings.Cut(text, from)
+	part, _, ok2 := strings.Cut(rest, to)
+	if !ok || !ok2 {
+		t.Fatalf("no %s ... %s", from, to)
+	}
+	return part
+}
+
+var svgOf = regexp.MustCompile(`(?s)<svg.*?</svg>`)
+
+// parses checks that a picture is well-formed XML without broken numbers.
+func parses(text string) error {
+	d := xml.NewDecoder(strings.NewReader(text))
+	for {
+		token, err := d.Token()
+		if errors.Is(err, io.EOF) {
+			return nil
+		}
+		if err != nil {
+			return err
+		}
+		if e, ok := token.(xml.StartElement); ok {
+			for _, a := range e.Attr {
+				if strings.Contains(a.Value, "NaN") || strings.Contains(a.Value, "Inf") {
+					return errors.New(a.Name.Local + "=" + a.Value)
+				}
+			}
+		}
+	}
+}
+
+// TestPicturesParse: every picture is XML, in the page with a text alternative
+// that is there.
+func TestPicturesParse(t *testing.T) {
+	r, traces := synthetic(3, 60)
+	text := pageOf(t, r, traces)
+	list := svgOf.FindAllString(text, -1)
+	named := 0
+	for _, s := range list {
+		if err := parses(s); err != nil {
+			t.Errorf("%v in %.200s", err, s)
+		}
+		if strings.Contains(s, `role="img"`) {
+			named++
+			ids := regexp.MustCompile(`aria-labelledby="(\S+) (\S+)"`).FindStringSubmatch(s)
+			if ids == nil || !regexp.MustCompile(`<title id="`+regexp.QuoteMeta(ids[1])+`">[^<]`).MatchString(s) ||
+				!regexp.MustCompile(`<desc id="`+regexp.QuoteMeta(ids[2])+`">[^<]{20}`).MatchString(s) {
+				t.Errorf("no text alternative: %.300s", s)
+			}
+		}
+	}
+	if named < 6+3+1+1+3+3+1 {
+		t.Errorf("only %d pictures", named)
+	}
+	for _, p := range draw(open(r), traces).all() {
+		if err := parses(p.File()); err != nil {
+			t.Errorf("%s: %v", p.Name, err)
+		}
+	}
+}
+
+// TestPageHoldsNothingForeign: no address, no inline style or handler.
+func TestPageHoldsNothingForeign(t *testing.T) {
+	r, traces := synthetic(2, 20)
+	text := pageOf(t, r, traces)
+	for _, bad := range []string{"http:", "https:", " style=", " onclick", " onload", "javascript:"} {
+		if strings.Contains(text, bad) {
+			t.Errorf("the page holds %q", bad)
+		}
+	}
+}
+
+// TestPageHostileNames: names from outside stay text.
+func TestPageHostileNames(t *testing.T) {
+	r, traces := synthetic(2, 20)
+	const evil = `</script><img src=x onerror=alert(1)>"'&` + "\x00\xff.wav"
+	traces.Clips[0].File, r.Clips[0].File = evil, evil
+	r.Refused[0] = bench.Refusal{File: evil, Reason: evil}
+	r.Command = []string{"fewbits", evil}
+	r.Warnings = []string{evil}
+	text := pageOf(t, r, traces)
+	if strings.Contains(text, "<img") {
+		t.Error("a name became markup")
+	}
+	for _, s := range svgOf.FindAllString(text, -1) {
+		if err := parses(s); err != nil {
+			t.Error(err)
+		}
+	}
+}
+
+// TestPageOfLittle: nothing measured, nothing traced, one of each.
+func TestPageOfLittle(t *testing.T) {
+	pageOf(t, &bench.Results{}, nil)
+	r, traces := synthetic(1, 1)
+	pageOf(t, r, nil)
+	r.Designs, r.Pooled, r.Results, r.Verdicts = r.Designs[:1], r.Pooled[:1], r.Results[:1], nil
+	pageOf(t, r, traces)
+}
+
+// TestPageRefusesWhatDoesNotFit: an edited file is told, not drawn.
+func TestPageRefusesWhatDoesNotFit(t *testing.T) {
+	for want, spoil := range map[string]func(*bench.Results, *bench.Traces){
+		`names "nowhere"`: func(r *bench.Results, _ *bench.Traces) { r.Verdicts[0].Winners[snr] = "nowhere" },
+		"thresholds":      func(r *bench.Results, _ *bench.Traces) { r.Designs[0].Thresholds = nil },
+		"minima":          func(_ *bench.Results, t *bench.Traces) { t.Clips[0].Min = nil },
+		"steps of 0 s":    func(_ *bench.Results, t *bench.Traces) { t.Clips[0].StepSeconds = 0 },
+		"steps of 20":     func(_ *bench.Results, t *bench.Traces) { t.Clips[1].SNR["mu-law:4"] = nil },
+		"6 limits":        func(_ *bench.Results, t *bench.Traces) { t.Sine[0].LimitDB = t.Sine[0].LimitDB[:6] },
+		"densities":       func(_ *bench.Results, t *bench.Traces) { t.Models[0].Density = nil },
+		"bound of":        func(_ *bench.Results, t *bench.Traces) { t.Bounds[0].Bits = nil },
+	} {
+		r, traces := synthetic(2, 20)
+		spoil(r, traces)
+		if err := HTML(io.Discard, r, traces, Options{}); err == nil || !strings.Contains(err.Error(), want) {
+			t.Errorf("%v, want %q", err, want)
+		}
+		if err := Pictures(t.TempDir(), r, traces, "svg"); err == nil {
+			t.Errorf("pictures of what has %q", want)
+		}
+	}
+}
+
+// TestPictures: a file per picture and per clip, in both forms.
+func TestPictures(t *testing.T) {
+	r, traces := synthetic(2, 20)
+	for _, format := range []string{"svg", "png"} {
+		if format == "png" && testing.Short() {
+			continue
+		}
+		dir := t.TempDir()
+		if err := Pictures(dir, r, traces, format); err != nil {
+			t.Fatal(err)
+		}
+		for _, name := range []string{"tradeoff-segsnr-open-bits", "tradeoff-snr-entropy", "level-4", "sine-8", "amplitudes", "staircases-8", "frames-6", "time-call-02"} {
+			if info, err := os.Stat(filepath.Join(dir, name+"."+format)); err != nil || info.Size() < 2000 {
+				t.Errorf("%s: %v", name, err)
+			}
+		}
+	}
+	if err := Pictures(t.TempDir(), r, traces, "gif"); err == nil {
+		t.Error("gif was taken")
+	}
+}
+
+// TestPicturesOfAnything: whatever is undefined or beside all bounds, the
+// pictures hold.
+func TestPicturesOfAnything(t *testing.T) {
+	rapid.Check(t, func(rt *rapid.T) {
+		r, traces := synthetic(1, 3)
+		r.Designs = r.Designs[4:7]
+		odd := rapid.SampledFrom([]float64{math.NaN(), math.Inf(1), math.Inf(-1), 0, -1e9, 1e9})
+		for i := range r.Pooled {
+			for _, name := range append(qualities, entropy) {
+				if rapid.Bool().Draw(rt, "spoil") {
+					r.Pooled[i].Figures[name] = bench.Num(odd.Draw(rt, name))
+				}
+			}
+			r.Pooled[i].Interval[0] = bench.Num(odd.Draw(rt, "interval"))
+		}
+		for i := range traces.Sweep {
+			traces.Sweep[i].SNRDB[3] = bench.Num(odd.Draw(rt, "sweep"))
+		}
+		for i := range traces.Spread {
+			traces.Spread[i].Quantiles[2] = bench.Num(odd.Draw(rt, "quantile"))
+		}
+		traces.Models[0].Density[2] = bench.Num(odd.Draw(rt, "density"))
+		traces.Clips[0].LevelDBov[1] = bench.Num(odd.Draw(rt, "level"))
+		b := open(r)
+		list := append(draw(b, traces).all(), overTime(b, traces, &traces.Clips[0], &r.Designs[0], &r.Designs[1]))
+		for _, p := range list {
+			if err := parses(p.SVG()); err != nil {
+				rt.Fatalf("%s: %v", p.Name, err)
+			}
+		}
+	})
+}
+
+func BenchmarkHTML(b *testing.B) {
+	r, traces := synthetic(50, 2000)
+	for b.Loop() {
+		if err := HTML(io.Discard, r, traces, Options{}); err != nil {
+			b.Fatal(err)
+		}
 	}
 }

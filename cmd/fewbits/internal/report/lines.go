@@ -92,10 +92,14 @@ func (b *book) lead2() (first, second *bench.Design) {
 	return of[0], of[1]
 }
 
+// floats are the numbers themselves, NaN where undefined.
 func floats(v []bench.Num) []float64 {
 	out := make([]float64, len(v))
 	for i, x := range v {
-		out[i] = float64(x)
+		out[i] = nan
+		if x.Defined() {
+			out[i] = float64(x)
+		}
 	}
 	return out
 }

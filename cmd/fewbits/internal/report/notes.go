@@ -20,8 +20,8 @@ func notes(b *book, left []string) (out []string) {
 	if b.IntervalMethod != "" {
 		out = append(out, "95 %: interval of "+b.intervalOf()+"; "+b.IntervalMethod+".")
 	}
-	if lead := b.means["lead"].Means; lead != "" {
-		out = append(out, "lead: "+lead+".")
+	if len(b.winner) > 0 {
+		out = append(out, leadMeans)
 	}
 	if len(left) > 0 {
 		out = append(out, "Left out for want of width: "+strings.Join(left, ", ")+".")
@@ -32,6 +32,8 @@ func notes(b *book, left []string) (out []string) {
 	}
 	return append(out, cautions...)
 }
+
+const leadMeans = "lead: clear, ahead of all others beyond chance; shared, level with the best; open, cannot be told from the best; behind."
 
 // cautions are what to beware of, as sentences.
 func (b *book) cautions() (out []string) {

@@ -18,7 +18,6 @@ const (
 	framesTop, framesFoot = 174, 318
 	timeHeight            = 362
 	levelMin, levelMax    = -90, 0
-	framesMin             = -20
 )
 
 // overTime draws a clip: waveform, level, and SNR of two designs.
@@ -26,16 +25,16 @@ func overTime(b *book, t *bench.Traces, c *bench.ClipTrace, a, z *bench.Design) 
 	f := canvas("time-"+odd.ReplaceAllString(clipName(b, c.File), "-"), "Over time: "+c.File, timeHeight)
 	end := float64(len(c.Max)) * c.StepSeconds
 	x := drawing.Scale{Min: 0, Max: math.Max(end, 1e-9), From: timeLeft, To: timeRight}
-	top := framesMax(t)
+	low, top := framesReach(t)
 	panel := func(lo, hi, foot, head float64) drawing.Panel {
 		return drawing.Panel{F: f, X: x, Y: drawing.Scale{Min: lo, Max: hi, From: foot, To: head}}
 	}
 	wave := panel(-1, 1, waveFoot, waveTop)
 	level := panel(levelMin, levelMax, levelFoot, levelTop)
-	frames := panel(framesMin, top, framesFoot, framesTop)
+	frames := panel(low, top, framesFoot, framesTop)
 	wave.Grid(nil, []drawing.Tick{{At: 0, Label: "0"}}, "", "wave")
 	level.Grid(nil, drawing.Ticks(levelMin, levelMax, 3), "", "level, dBov")
-	frames.Grid(nil, drawing.Ticks(framesMin, top, 6), "time, s", "SNR, dB")
+	frames.Grid(nil, drawing.Ticks(low, top, 6), "time, s", "SNR, dB")
 	timeTicks(f, x)
 	peak := peak(c)
 	f.Words("tick", timeLeft-6, waveTop+8, drawing.End, peakLabel(peak), "data-part", "peak")
@@ -98,15 +97,15 @@ func envelope(p drawing.Panel, c *bench.ClipTrace, peak float64) []drawing.Point
 	return out
 }
 
-// framesMax is the top of the SNR axis: the same for all clips and designs.
-func framesMax(t *bench.Traces) float64 {
-	top := 30.0
+// framesReach is the SNR axis, the same for all clips and designs.
+func framesReach(t *bench.Traces) (low, top float64) {
+	low, top = 0, 30
 	for i := range t.Clips {
 		for _, v := range t.Clips[i].SNR {
-			_, top = drawing.Reach(0, top, floats(v)...)
+			low, top = drawing.Reach(low, top, floats(v)...)
 		}
 	}
-	return math.Min(100, math.Ceil(top/10)*10)
+	return math.Max(-20, math.Floor(low/10)*10), math.Min(100, math.Ceil(top/10)*10)
 }
 
 var odd = regexp.MustCompile(`[^\pL\pN._-]+`)

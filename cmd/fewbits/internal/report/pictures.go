@@ -15,6 +15,9 @@ func Pictures(dir string, r *bench.Results, t *bench.Traces, format string) erro
 	if format != "svg" && format != "png" {
 		return fmt.Errorf("picture format %q: want svg or png", format)
 	}
+	if err := check(r, t); err != nil {
+		return err
+	}
 	b := open(r)
 	list := draw(b, t).all()
 	if first, second := b.lead2(); first != nil {

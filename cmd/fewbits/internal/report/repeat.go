@@ -136,7 +136,7 @@ func (p *content) data() (template.JS, error) {
 	}
 	out.Place = place{
 		timeLeft, timeRight, [4]float64{waveFoot, waveTop, -1, 1},
-		[4]float64{levelFoot, levelTop, levelMin, levelMax}, [4]float64{framesFoot, framesTop, framesMin, p.top},
+		[4]float64{levelFoot, levelTop, levelMin, levelMax}, [4]float64{framesFoot, framesTop, p.low, p.top},
 	}
 	text, err := json.Marshal(out)
 	return template.JS(text), err

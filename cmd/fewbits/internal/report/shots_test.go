@@ -11,19 +11,13 @@ import (
 	"github.com/chromedp/chromedp"
 )
 
-// TestWidths: at three widths, light and dark, nothing sticks out sideways.
-// With -artifacts, screenshots and a print are kept for the eye.
-func TestWidths(t *testing.T) {
-	r, traces := synthetic(5, 1500)
-	b := browse(t)
-	b.do(t, chromedp.Navigate(leave(t, r, traces)))
+// widths: at three widths, light and dark, nothing sticks out sideways. With
+// -artifacts, screenshots and a print are kept for the eye.
+func widths(t *testing.T, b *browser) {
 	keep := flag.Lookup("test.artifacts").Value.String() == "true"
 	for _, width := range []int64{380, 820, 1280} {
 		for _, scheme := range []string{"light", "dark"} {
-			media := emulation.SetEmulatedMediaParams{Features: []*emulation.MediaFeature{{Name: "prefers-color-scheme", Value: scheme}}}
-			if _, err := chromedp.Call(b, emulation.SetEmulatedMedia, media); err != nil {
-				t.Fatal(err)
-			}
+			b.prefer(t, scheme)
 			b.do(t, chromedp.EmulateViewport(width, 900))
 			if got := ask[int64](t, b, `document.documentElement.scrollWidth`); got > width {
 				t.Errorf("%d wide, %s: the page is %d wide", width, scheme, got)
@@ -35,6 +29,18 @@ func TestWidths(t *testing.T) {
 	}
 	if keep {
 		picture(t, b, "page.pdf", chromedp.PrintToPDF())
+	}
+}
+
+// prefer sets what the reader's system asks for: a colour scheme, and always
+// no moving about.
+func (b *browser) prefer(t *testing.T, scheme string) {
+	t.Helper()
+	media := emulation.SetEmulatedMediaParams{Features: []*emulation.MediaFeature{
+		{Name: "prefers-color-scheme", Value: scheme}, {Name: "prefers-reduced-motion", Value: "reduce"},
+	}}
+	if _, err := chromedp.Call(b, emulation.SetEmulatedMedia, media); err != nil {
+		t.Fatal(err)
 	}
 }
 

@@ -117,7 +117,7 @@ func (b *book) designTable(id, caption, note string, figures []string, of func(*
 	if lead {
 		t.Head = append(t.Head, headCell{Text: "95 %", Unit: b.intervalUnit(), Means: "interval of " + b.intervalOf() + " of " + b.Leading},
 			headCell{Text: "behind", Unit: "dB", Means: "95 % interval of the difference from the leader"},
-			headCell{Text: "lead", Words: true, Means: b.means["lead"].Means})
+			headCell{Text: "lead", Words: true, Means: leadMeans})
 		t.Note += b.intervalNote()
 	}
 	for _, name := range figures {

@@ -78,7 +78,7 @@ func tradeoff(b *book, t *bench.Traces, quality, cost string) plate {
 func tradeoffLine(b *book, p drawing.Panel, i int, k, quality, cost string) string {
 	var members []*bench.Design
 	for j := range b.Designs {
-		if d := &b.Designs[j]; kin(d.Spec) == k && b.figure(d.Spec, quality).Defined() {
+		if d := &b.Designs[j]; kin(d.Spec) == k && b.figure(d.Spec, quality).Defined() && !math.IsNaN(b.cost(d, cost)) {
 			members = append(members, d)
 		}
 	}

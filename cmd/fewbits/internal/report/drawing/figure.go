@@ -8,11 +8,16 @@ package drawing
 
 import "math"
 
-// Point is a place in user units. A NaN coordinate lifts the pen.
+// Point is a place in user units. A coordinate that is NaN or infinite lifts
+// the pen.
 type Point struct{ X, Y float64 }
 
 // Up lifts the pen between two parts of a line.
 var Up = Point{math.NaN(), math.NaN()}
+
+func (p Point) lifts() bool {
+	return math.IsNaN(p.X-p.X) || math.IsNaN(p.Y-p.Y)
+}
 
 // Ink says how a shape is drawn.
 type Ink struct {

@@ -4,7 +4,6 @@ import (
 	"bytes"
 	"fmt"
 	"image/color"
-	"math"
 	"sync"
 
 	"codeberg.org/go-fonts/liberation/liberationsansbold"
@@ -43,7 +42,7 @@ func (s *shape) draw(dc *gg.Context) {
 	pen := false
 	for _, p := range s.points {
 		switch {
-		case math.IsNaN(p.X) || math.IsNaN(p.Y):
+		case p.lifts():
 			pen = false
 		case pen:
 			dc.LineTo(zoom*p.X, zoom*p.Y)
@@ -89,19 +88,27 @@ func paint(role string) color.Color {
 	return c
 }
 
-// typefaces are the fonts by text role.
-var typefaces = sync.OnceValues(func() (map[string]font.Face, error) {
+// typefaces makes the fonts by text role, for one picture: a face may not be
+// used by two at a time.
+func typefaces() (map[string]font.Face, error) {
+	parsed, err := parsedFonts()
+	if err != nil {
+		return nil, err
+	}
 	out := map[string]font.Face{}
-	for role, ttf := range map[string][]byte{
-		"tick": liberationsansregular.TTF, "label": liberationsansregular.TTF, "head": liberationsansbold.TTF,
-	} {
-		parsed, err := opentype.Parse(ttf)
-		if err != nil {
+	for role, f := range map[string]*opentype.Font{"tick": parsed[0], "label": parsed[0], "head": parsed[1]} {
+		if out[role], err = opentype.NewFace(f, &opentype.FaceOptions{Size: zoom * size(role), DPI: 72}); err != nil {
 			return nil, fmt.Errorf("font for %s: %w", role, err)
 		}
-		out[role], err = opentype.NewFace(parsed, &opentype.FaceOptions{Size: zoom * size(role), DPI: 72})
-		if err != nil {
-			return nil, fmt.Errorf("font for %s: %w", role, err)
+	}
+	return out, nil
+}
+
+// parsedFonts are regular and bold.
+var parsedFonts = sync.OnceValues(func() (out [2]*opentype.Font, err error) {
+	for i, ttf := range [][]byte{liberationsansregular.TTF, liberationsansbold.TTF} {
+		if out[i], err = opentype.Parse(ttf); err != nil {
+			return out, fmt.Errorf("font: %w", err)
 		}
 	}
 	return out, nil

@@ -159,7 +159,7 @@ func (s *shape) d() string {
 	var b strings.Builder
 	letter, last := "M", ""
 	for _, p := range s.points {
-		if math.IsNaN(p.X) || math.IsNaN(p.Y) {
+		if p.lifts() {
 			letter, last = "M", ""
 			continue
 		}
