@@ -41,8 +41,9 @@ func (o *EntropyOptions) check() error {
 }
 
 // atRate looks for the price at which solve's entropy is nearest below rate:
-// a vertex of the lower convex hull of (entropy, MSE). power is the variance,
-// for a first guess; a bit is worth a factor of four (high-resolution law).
+// a vertex of the lower convex hull of (entropy, MSE). power is the mean
+// square, for a first guess (a bit is worth a factor of four at high rates);
+// lossless coding is met before 1e-18 of it.
 func atRate(rate, power float64, solve func(lambda float64) Solution) Solution {
 	var best Solution
 	found := false
@@ -71,9 +72,9 @@ func nextPrice(lambda, excess, cheap, dear float64, round int) float64 {
 	step := lambda * math.Pow(4, math.Max(-3, math.Min(3, excess*1.02)))
 	switch {
 	case math.IsInf(dear, 1):
-		return math.Max(step, lambda*1.01)
+		return math.Max(step, lambda*math.Exp2(float64(round)/2))
 	case cheap == 0:
-		return math.Min(step, lambda/1.01)
+		return math.Min(step, lambda*math.Exp2(-float64(round)/2))
 	case round%3 == 2 || !(step > cheap && step < dear):
 		return math.Sqrt(cheap * dear)
 	}

@@ -47,6 +47,9 @@ func exactFrom(h Histogram, n int, sym Symmetry, penalty float64) Solution {
 	if cells >= len(half.Values) {
 		values = spread(half.Values, cells)
 		thresholds = middles(values)
+		if spare := cells - len(half.Values); spare > 0 {
+			s.Notes = append(s.Notes, fmt.Sprintf("%d distinct values for %d levels: %d spare levels lie in the widest gaps", len(half.Values), cells, spare))
+		}
 	} else {
 		var edges []int
 		edges, s.Rounds = optimalEdges(half, cells, pinned, penalty)

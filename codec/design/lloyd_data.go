@@ -58,7 +58,7 @@ func RefineData(h Histogram, start Solution, sym Symmetry, rounds int) (Solution
 		values = values[n/2:]
 	}
 	done := lloyd(half, newRealSums(half, pinned), values, pinned, rounds)
-	thresholds := middlesOf(values)
+	thresholds := midpoints(values)
 	s := Solution{Rounds: done, Proof: Local, Starts: max(1, start.Starts)}
 	s.Residual = residualData(half, values, pinned)
 	if sym == Mirror {
@@ -106,15 +106,6 @@ func (c *realSums) centroid(i, j int) float64 {
 	w := c.w[j].add(c.w[i].neg())
 	s := c.s[j].add(c.s[i].neg())
 	return c.x[i] + s.add(w.times(-c.x[i])).hi/w.hi
-}
-
-// middlesOf returns the midpoints of neighbours, equal ones included.
-func middlesOf(values []float64) []float64 {
-	t := make([]float64, len(values)-1)
-	for k := range t {
-		t[k] = values[k]/2 + values[k+1]/2
-	}
-	return t
 }
 
 // residualData is max |value - centroid| / cell width over cells with data.

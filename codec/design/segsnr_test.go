@@ -94,18 +94,16 @@ func gainFloor(path string, bits int) float64 {
 }
 
 func TestSegSNRBeatsMuLawOnSpeech(t *testing.T) {
-	paths := debian(t)
-	if testing.Short() {
-		paths = paths[:1]
-	}
-	for i, path := range paths {
+	for i, path := range debian(t) {
+		if i%3 != 0 { // one in three keeps the test short
+			continue
+		}
 		words, rate := recording(t, path)
 		f, err := NewFrames(Take{inRange(words, rate), 1.0 / 32768})
 		if err != nil {
 			t.Fatal(err)
 		}
-		// One size of table a recording keeps the test short.
-		bits := []int{4, 6, 8}[i%3]
+		bits := []int{4, 6, 8}[i/3%3]
 		mu, err := codec.Companded(1<<bits, codec.MuLaw{Mu: 255}, 1, codec.MidRise)
 		if err != nil {
 			t.Fatal(err)
@@ -190,7 +188,7 @@ func TestSegSNRRounds(t *testing.T) {
 			for _, open := range []bool{false, true} {
 				a := newSegAim(invented(uint64(n), 60), n, sym, open)
 				for _, start := range a.starts() {
-					for _, soft := range []float64{1, 0.1} {
+					for _, soft := range []float64{0.3} {
 						now := a.smooth(start.errors, soft)
 						for table := start; ; {
 							table = a.optimum(a.weights(table.errors, soft))
