@@ -2,6 +2,7 @@ package family
 
 import (
 	"fmt"
+	"strings"
 
 	"fewbits/codec"
 	"fewbits/codec/design"
@@ -17,25 +18,47 @@ var (
 
 var lloydMax = Family{
 	Name:    "lloyd-max",
-	About:   "least mean squared error for a model or for the recordings",
+	About:   "least mean squared error, or another aim, for a model or for the recordings",
 	MinBits: 1, MaxBits: 12,
-	Keys: []Key{fromKey, scaleKey, oneOf("symmetry", "mirror", "free"), oneOf("aim", "mse", "segsnr", "segsnr-open")},
+	Keys: []Key{
+		fromKey, scaleKey, oneOf("symmetry", "mirror", "free"),
+		oneOf("aim", "mse", "segsnr", "segsnr-open", "entropy"),
+		optional("rate", "a number of bits a sample above 0, at most 16, with aim=entropy", 16),
+		optional("lambda", "a price of a bit above 0, at most 1e6, with aim=entropy", 1e6),
+	},
 	Needs: func(a Args) Need {
 		switch {
-		case a["aim"] != "mse":
+		case strings.HasPrefix(a["aim"], "segsnr"):
 			return FramedData
 		case a["from"] == "data":
 			return Data
 		}
 		return Level
 	},
-	Check: func(s Spec) error {
-		if s.Get("aim") != "mse" && s.Get("from") != "data" {
-			return fmt.Errorf("aim=%q goes with from=data only", s.Get("aim"))
-		}
-		return nil
-	},
-	Make: makeLloydMax,
+	Check: checkLloydMax,
+	Make:  makeLloydMax,
+}
+
+// optional is a number above 0 that may be left out.
+func optional(name, accepts string, most float64) Key {
+	return Key{
+		Name: name, Accepts: accepts, Default: "",
+		Valid: func(v string) bool { f, ok := parseNumber(v); return ok && f > 0 && f <= most },
+	}
+}
+
+// checkLloydMax refuses aims without what they need.
+func checkLloydMax(s Spec) error {
+	aim, rate, lambda := s.Get("aim"), s.Get("rate"), s.Get("lambda")
+	switch {
+	case strings.HasPrefix(aim, "segsnr") && s.Get("from") != "data":
+		return fmt.Errorf("aim=%q goes with from=data only", aim)
+	case aim == "entropy" && (rate == "") == (lambda == ""):
+		return fmt.Errorf("aim=entropy needs rate= or lambda=, one of them")
+	case aim != "entropy" && rate+lambda != "":
+		return fmt.Errorf("rate=%q and lambda=%q go with aim=entropy only", rate, lambda)
+	}
+	return nil
 }
 
 func makeLloydMax(s Spec, m Material) (Made, error) {
@@ -44,34 +67,63 @@ func makeLloydMax(s Spec, m Material) (Made, error) {
 		sym = design.Free
 	}
 	var made Made
-	var sol design.Solution
 	var err error
-	switch {
-	case s.Get("aim") != "mse":
-		made.From = "the recordings' frames in range"
-		sol, err = segmental(s, m, sym)
-	case s.Get("from") == "data":
-		made.From = "the recordings' amplitudes"
-		sol, err = design.ExactData(m.Histogram, s.Levels, sym)
-	default:
-		if made.Density, made.From, err = m.Density(s.Get("from"), s.Get("scale")); err != nil {
+	switch from := s.Get("from"); {
+	case from != "data":
+		if made.Density, made.From, err = m.Density(from, s.Get("scale")); err != nil {
 			return made, err
 		}
-		sol, err = design.LloydMax(made.Density, s.Levels, sym)
+	case s.Need() == FramedData:
+		made.From = "the recordings' frames in range"
+	default:
+		made.From = "the recordings' amplitudes"
 	}
+	sol, err := solve(s, m, made.Density, sym)
 	if err != nil {
 		return made, err
+	}
+	if s.Get("aim") == "mse" && s.Get("from") == "data" && !m.Exact {
+		sol.Proof, sol.Starts = design.Local, 1
+		sol.Notes = append(sol.Notes, "the recordings are finer than the 16-bit grid it was designed on")
 	}
 	made.Solution, made.Notes = &sol, sol.Notes
 	made.Stair, err = of(sol, codec.TieUp)
 	return made, err
 }
 
-// segmental designs for the mean frame SNR.
-func segmental(s Spec, m Material, sym design.Symmetry) (design.Solution, error) {
-	frames, err := m.Frames()
-	if err != nil {
-		return design.Solution{}, err
+// solve hands the aim to its designer; d is nil for data.
+func solve(s Spec, m Material, d design.Density, sym design.Symmetry) (design.Solution, error) {
+	switch aim := s.Get("aim"); {
+	case aim == "entropy":
+		opt := design.EntropyOptions{Levels: s.Levels, Symmetry: sym}
+		if s.Get("rate") != "" {
+			opt.Rate = s.Number("rate")
+		} else {
+			opt.Lambda = s.Number("lambda")
+		}
+		return entropyConstrained(m, d, opt)
+	case aim != "mse":
+		frames, err := m.Frames()
+		if err != nil {
+			return design.Solution{}, err
+		}
+		return design.SegSNR(*frames, s.Levels, sym, aim == "segsnr-open", design.SegOptions{})
+	case d == nil:
+		return design.ExactData(m.Histogram, s.Levels, sym)
 	}
-	return design.SegSNR(*frames, s.Levels, sym, s.Get("aim") == "segsnr-open", design.SegOptions{})
+	return design.LloydMax(d, s.Levels, sym)
+}
+
+// entropyConstrained designs for a density or, where d is nil, for data, and
+// notes the rate reached.
+func entropyConstrained(m Material, d design.Density, opt design.EntropyOptions) (sol design.Solution, err error) {
+	if d != nil {
+		sol, err = design.EntropyDensity(d, opt)
+	} else {
+		sol, err = design.EntropyData(m.Histogram, opt)
+	}
+	if err == nil {
+		sol.Notes = append(sol.Notes, fmt.Sprintf("entropy reached: %.4f bits a sample with %d levels", sol.Entropy, len(sol.Values)))
+	}
+	return sol, err
 }

@@ -8,6 +8,7 @@ var Register = []Family{
 	g711Mu,
 	g711A,
 	lloydMax,
+	compander,
 }
 
 // Names lists the families in order.

@@ -24,6 +24,10 @@ func TestParseAccepts(t *testing.T) {
 		{"uniform:6,overload=optimal,from=gamma", 6, 64, Level, "uniform-6_overload-optimal_from-gamma"},
 		{"lloyd-max:12", 12, 4096, Level, "lloyd-max-12"},
 		{"lloyd-max,levels=3,from=gaussian,scale=active,symmetry=free", 2, 3, Level, "lloyd-max_levels-3_from-gaussian_scale-active_symmetry-free"},
+		{"uniform:6,overload=optimal,from=data", 6, 64, Data, "uniform-6_overload-optimal_from-data"},
+		{"lloyd-max:6,aim=entropy,rate=3.5", 6, 64, Level, "lloyd-max-6_aim-entropy_rate-3.5"},
+		{"lloyd-max:6,from=data,aim=entropy,lambda=1e-4", 6, 64, Data, "lloyd-max-6_from-data_aim-entropy_lambda-1e-4"},
+		{"compander:4,from=data,segments=8,power=0.5", 4, 16, Data, "compander-4_from-data_segments-8_power-0.5"},
 		{"lloyd-max:4,from=data", 4, 16, Data, "lloyd-max-4_from-data"},
 		{"lloyd-max:4,from=data,aim=segsnr", 4, 16, FramedData, "lloyd-max-4_from-data_aim-segsnr"},
 		{"uniform", 0, 0, Nothing, "uniform"},
@@ -82,6 +86,10 @@ func TestParseRefuses(t *testing.T) {
 		{"lloyd-max:8,from=cauchy", `"cauchy"`, "laplacian"},
 		{"lloyd-max:8,scale=peak", `"peak"`, "rms|active"},
 		{"lloyd-max:8,symmetry=odd", `"odd"`, "mirror|free"},
+		{"lloyd-max:8,aim=entropy", "aim=entropy", "rate= or lambda="},
+		{"lloyd-max:8,aim=entropy,rate=3,lambda=1", "aim=entropy", "one of them"},
+		{"lloyd-max:8,rate=3", "rate=", "aim=entropy"},
+		{"lloyd-max:8,aim=entropy,rate=NaN", `"NaN"`, "bits a sample"},
 		{"lloyd-max:8,aim=segsnr", `"segsnr"`, "from=data"},
 	} {
 		_, err := Parse(row.text)

@@ -18,10 +18,12 @@ var uniform = Family{
 			Name: "overload", Accepts: "full, optimal, a level above 0 (full scale = 1) or a multiple of the rms such as 4rms",
 			Default: "full", Valid: validOverload,
 		},
-		modelKey, scaleKey,
+		fromKey, scaleKey,
 	},
 	Needs: func(a Args) Need {
 		switch o := a["overload"]; {
+		case o == "optimal" && a["from"] == "data":
+			return Data
 		case o == "optimal" || strings.HasSuffix(o, "rms"):
 			return Level
 		}
@@ -70,10 +72,13 @@ func makeUniformOptimal(s Spec, m Material) (Made, error) {
 	made := Made{Arithmetic: true}
 	var sol design.Solution
 	var err error
-	if made.Density, made.From, err = m.Density(s.Get("from"), s.Get("scale")); err != nil {
-		return made, err
+	if s.Get("from") == "data" {
+		made.From = "the recordings' amplitudes"
+		sol, err = design.UniformData(m.Histogram, s.Levels)
+	} else if made.Density, made.From, err = m.Density(s.Get("from"), s.Get("scale")); err == nil {
+		sol, err = design.OptimalUniform(made.Density, s.Levels)
 	}
-	if sol, err = design.OptimalUniform(made.Density, s.Levels); err != nil {
+	if err != nil {
 		return made, err
 	}
 	v := sol.Values[s.Levels-1] * float64(s.Levels) / float64(s.Levels-1)
