@@ -110,7 +110,10 @@ func printStaircase(w io.Writer, s bench.Staircase) {
 	fmt.Fprintf(w, "%s: %d levels, %d bits, made on: %s\n", s.Spec, s.Levels, s.Bits, s.MadeOn)
 	fmt.Fprintf(w, "  for %s: mse %.6g, SNR %s dB, entropy %s bits, overload %.3g of the samples\n",
 		s.Model, float64(s.MSE), num(s.SNRDB, 3), num(s.EntropyBits, 4), float64(s.OverloadP))
-	fmt.Fprintf(w, "  %s dB short of Shannon's bound at this number of levels; SNR with the level off by", num(s.BoundGapDB, 2))
+	if s.BoundGapDB.Defined() {
+		fmt.Fprintf(w, "  %s dB short of Shannon's bound at this number of levels\n", num(s.BoundGapDB, 2))
+	}
+	fmt.Fprint(w, "  SNR with the level off by")
 	for _, o := range s.Off {
 		fmt.Fprintf(w, " %+g dB: %s", o.DB, num(o.SNRDB, 2))
 	}

@@ -9,6 +9,7 @@ import (
 	"fewbits/codec"
 	"fewbits/codec/design"
 	"fewbits/codec/family"
+	"fewbits/measure"
 	"fewbits/measure/model"
 )
 
@@ -54,6 +55,11 @@ func MakeStaircases(ctx context.Context, plan Plan, judge string, rms float64) (
 		s := Staircase{Design: finish(spec, got, who).Design, Model: got.From, Stair: got.Stair, Words: words}
 		s.Design.Name = spec.Name()
 		d := got.Density
+		if words != nil && d == nil {
+			s.judgeData(m.Histogram, made{stair: got.Stair}.search())
+			out = append(out, s)
+			continue
+		}
 		if d == nil {
 			if d, err = model.OfRMS(judge, m.RMS); err != nil {
 				return nil, refused, err
@@ -108,6 +114,35 @@ func (s *Staircase) judge(d design.Density, judge string, rms float64) {
 	for _, db := range []float64{-12, -6, 6, 12} {
 		k := math.Pow(10, db/20)
 		s.Off = append(s.Off, OffLevel{DB: db, SNRDB: Num(snrScaled(d, s.Thresholds, s.Values, k, power))})
+	}
+}
+
+// judgeData fills in what the recordings say of the staircase.
+func (s *Staircase) judgeData(h design.Histogram, search *measure.Search) {
+	counts := make([]int64, len(h.Weights))
+	var power, over, total float64
+	for i, w := range h.Weights {
+		counts[i] = int64(w)
+		x := h.Values[i]
+		power += w * x * x
+		total += w
+		if x < float64(s.Lo) || x > float64(s.Hi) {
+			over += w
+		}
+	}
+	indices := make([]int64, len(s.Values))
+	var sum float64
+	for i, x := range h.Values {
+		k := search.Index(x)
+		e := x - s.Values[k]
+		sum += h.Weights[i] * e * e
+		indices[k] += counts[i]
+	}
+	s.Model = "the recordings"
+	s.MSE, s.SNRDB = Num(sum/total), Num(10*math.Log10(power/sum))
+	s.EntropyBits, s.OverloadP, s.BoundGapDB = Num(measure.Entropy(indices)), Num(over/total), Num(math.NaN())
+	for _, db := range []float64{-12, -6, 6, 12} {
+		s.Off = append(s.Off, OffLevel{DB: db, SNRDB: Num(search.SNRAt(h.Values, counts, db))})
 	}
 }
 
