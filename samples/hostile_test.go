@@ -277,6 +277,7 @@ func hostileFLAC(t *testing.T) []row {
 		{name: "FLAC header alone", file: good[:42], err: "no samples"},
 		{name: "fLaC alone", file: []byte("fLaC"), err: "no usable stream header"},
 		{name: "FLAC header cut off", file: good[:30], err: "no usable stream header"},
+		{name: "FLAC that opens with a picture of 16 MB", file: []byte("fLaC\x06\xFF\xFF\xFF\x00"), err: "no usable stream header"},
 		{name: "FLAC, metadata of 16 MB claimed", file: cat([]byte("fLaC"), []byte{0, 0, 0, 34}, good[8:42], []byte{1, 0xFF, 0xFF, 0xFF}), err: "no usable stream header"},
 	}
 }
