@@ -138,7 +138,7 @@ func (p *content) parts() []section {
 		section
 		there bool
 	}{
-		{section{"answer", "answer"}, true}, {section{"tradeoff", "bits"}, p.Sets["tradeoff"] != nil},
+		{section{"answer", "answer"}, true}, {section{"lead", "lead"}, p.Sets["gaps"] != nil}, {section{"tradeoff", "bits"}, p.Sets["tradeoff"] != nil},
 		{section{"level", "level"}, p.HasLevels()}, {section{"signal", "amplitudes"}, p.Sets["signal"] != nil},
 		{section{"stairs", "staircases"}, p.Sets["stairs"] != nil}, {section{"time", "over time"}, p.Time != nil},
 		{section{"frames", "frames"}, p.Sets["spread"] != nil}, {section{"numbers", "numbers"}, true},
@@ -187,4 +187,4 @@ func soft(name string) template.HTML {
 	return template.HTML(breaks.Replace(template.HTMLEscapeString(name)))
 }
 
-var breaks = strings.NewReplacer("_", "_<wbr>", ",", ",<wbr>", ":", ":<wbr>", "=", "=<wbr>")
+var breaks = strings.NewReplacer("_", "_<wbr>", ",", ",<wbr>", ":", ":<wbr>", "=", "=<wbr>", "/", "/<wbr>")

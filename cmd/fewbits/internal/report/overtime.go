@@ -4,7 +4,6 @@ import (
 	"fmt"
 	"math"
 	"regexp"
-	"strconv"
 
 	"fewbits/cmd/fewbits/internal/bench"
 	"fewbits/cmd/fewbits/internal/report/drawing"
@@ -68,7 +67,7 @@ func timeTicks(f *drawing.Figure, x drawing.Scale) {
 }
 
 func peakLabel(peak float64) string {
-	return drawing.Minus(strconv.FormatFloat(decibels(peak), 'f', 0, 64)) + " dB"
+	return drawing.Minus(fixed(bench.Num(decibels(peak)), 0)) + " dB"
 }
 
 // steps are the middles of the steps in seconds.

@@ -20,13 +20,14 @@ const width = 600
 
 // album draws every picture but those over time.
 type album struct {
-	Tradeoff, Sweep, Sine, Noise, Signal, Stairs, Spread []plate
+	Gaps, Tradeoff, Sweep, Sine, Noise, Signal, Stairs, Spread []plate
 }
 
 func draw(b *book, t *bench.Traces) album {
 	var a album
 	a.Tradeoff = tradeoffs(b, t)
 	for _, bits := range b.rates() {
+		a.Gaps = add(a.Gaps, gaps(b, bits))
 		a.Sweep = add(a.Sweep, levelPlate(b, t.Sweep, bits, sweepKind))
 		a.Sine = add(a.Sine, levelPlate(b, t.Sine, bits, sineKind))
 		a.Noise = add(a.Noise, levelPlate(b, t.Noise, bits, noiseKind))
@@ -46,7 +47,7 @@ func add(list []plate, p *plate) []plate {
 
 // all lists the pictures in the order of the page.
 func (a album) all() (out []plate) {
-	for _, set := range [][]plate{a.Tradeoff, a.Sweep, a.Sine, a.Noise, a.Signal, a.Stairs, a.Spread} {
+	for _, set := range [][]plate{a.Gaps, a.Tradeoff, a.Sweep, a.Sine, a.Noise, a.Signal, a.Stairs, a.Spread} {
 		out = append(out, set...)
 	}
 	return out

@@ -54,7 +54,7 @@ func sets(b *book, a album) map[string]*set {
 		out["tradeoff"] = tradeoffSet(b, a.Tradeoff)
 	}
 	for name, plates := range map[string][]plate{
-		"sweep": a.Sweep, "sine": a.Sine, "noise": a.Noise, "signal": a.Signal, "stairs": a.Stairs, "spread": a.Spread,
+		"gaps": a.Gaps, "sweep": a.Sweep, "sine": a.Sine, "noise": a.Noise, "signal": a.Signal, "stairs": a.Stairs, "spread": a.Spread,
 	} {
 		if len(plates) > 0 {
 			out[name] = byBitsSet(b, name, plates)

@@ -178,15 +178,18 @@ func (g *invention) measure(r *bench.Results) {
 	for i, d := range inventedDesigns {
 		p := &r.Pooled[i]
 		top := r.Pooled[best[d.bits]]
-		gap := p.Figures[bench.OpenSNR] - top.Figures[bench.OpenSNR]
+		gap := top.Figures[bench.OpenSNR] - p.Figures[bench.OpenSNR]
 		p.Behind = [2]bench.Num{gap - 0.3, gap + 0.3}
 		switch {
-		case i == best[d.bits] && d.bits == 8:
-			p.Lead = "shared"
 		case i == best[d.bits]:
-			p.Lead = "clear"
-		case gap > -0.4:
-			p.Lead = "shared"
+			p.Lead, p.Behind = "clear", [2]bench.Num{bench.Num(nan), bench.Num(nan)}
+			if d.bits == 8 {
+				p.Lead = "open"
+			}
+		case gap < 0.4:
+			p.Lead = "open"
+		default:
+			p.Lead = "behind"
 		}
 	}
 	for _, bits := range []int{4, 6, 8} {
@@ -205,7 +208,7 @@ func inventedVerdict(r *bench.Results, bits, best int) bench.Verdict {
 		}
 	}
 	for i, d := range r.Designs {
-		if d.Bits == bits && r.Pooled[i].Lead != "" {
+		if d.Bits == bits && r.Pooled[i].Lead != "behind" {
 			v.Tied = append(v.Tied, d.Spec)
 		}
 	}
