@@ -64,18 +64,17 @@ func tone(n, rate int, hz, phase float64) []float64 {
 // new rate, with no delay; beyond the new Nyquist frequency nothing comes out.
 // Closed form; bound from the filter's ripple, both edges left out.
 func TestResampleTones(t *testing.T) {
-	const seconds = 1
-	for _, c := range []struct{ from, to int }{{48000, 8000}, {48000, 16000}, {44100, 16000}, {8000, 48000}, {16000, 8000}, {22050, 11025}, {11025, 16000}, {8000, 8001}} {
+	for _, c := range []struct{ from, to int }{{48000, 8000}, {48000, 16000}, {44100, 16000}, {8000, 48000}, {16000, 8000}, {11025, 16000}, {8000, 8001}} {
 		nyquist := float64(min(c.from, c.to)) / 2
-		for _, x := range []float64{0.01, 0.3, 0.899} {
+		for _, x := range []float64{0.01, 0.899} {
 			hz := x * nyquist
-			r, done := apply1(t, record(t, c.from, samples.Depth32F, tone(seconds*c.from, c.from, hz, 0.3)), Plan{Rate: c.to})
-			if i := r.Info(); i.Rate != c.to || i.Frames != int64(seconds*c.to) || len(done) != 1 {
+			r, done := apply1(t, record(t, c.from, samples.Depth32F, tone(c.from/2, c.from, hz, 0.3)), Plan{Rate: c.to})
+			if i := r.Info(); i.Rate != c.to || i.Frames != int64((c.to+1)/2) || len(done) != 1 {
 				t.Fatalf("%d to %d Hz: %+v, %q", c.from, c.to, i, done)
 			}
-			got, want := all(t, r)[0], tone(seconds*c.to, c.to, hz, 0.3)
-			for i := c.to / 4; i < seconds*c.to-c.to/4; i++ {
-				if math.Abs(got[i]-want[i]) > 2e-5 {
+			got, want := all(t, r)[0], tone((c.to+1)/2, c.to, hz, 0.3)
+			for i := c.to / 10; i < c.to/2-c.to/10; i++ {
+				if math.Abs(got[i]-want[i]) > 3e-6 {
 					t.Errorf("%d to %d Hz: %.0f Hz: sample %d is %g, want %g", c.from, c.to, hz, i, got[i], want[i])
 					break
 				}
@@ -85,8 +84,8 @@ func TestResampleTones(t *testing.T) {
 			continue
 		}
 		for _, hz := range []float64{nyquist, nyquist * 1.01, nyquist*2 - 100} {
-			r, _ := apply1(t, record(t, c.from, samples.Depth32F, tone(seconds*c.from, c.from, math.Min(hz, float64(c.from)/2-1), 0.3)), Plan{Rate: c.to})
-			for i, v := range all(t, r)[0][c.to/4 : seconds*c.to-c.to/4] {
+			r, _ := apply1(t, record(t, c.from, samples.Depth32F, tone(c.from/2, c.from, math.Min(hz, float64(c.from)/2-1), 0.3)), Plan{Rate: c.to})
+			for i, v := range all(t, r)[0][c.to/10 : c.to/2-c.to/10] {
 				if math.Abs(v) > 0.5e-5 {
 					t.Errorf("%d to %d Hz: %.1f dB of a tone at %.0f Hz at %d", c.from, c.to, 20*math.Log10(math.Abs(v)/0.5), hz, i)
 					break
