@@ -50,28 +50,35 @@ func reason(file string, err error) string {
 	return strings.TrimPrefix(err.Error(), file+": ")
 }
 
-// openOne opens, prepares and surveys one recording.
-func (e *engine) openOne(file string) (*survey, error) {
+// openOne opens, prepares and surveys one recording; where that fails it is
+// closed again.
+func (e *engine) openOne(file string) (s *survey, err error) {
 	rec, err := samples.Open(file)
 	if err != nil {
 		return nil, err
 	}
+	defer func() {
+		if err != nil {
+			rec.Close()
+		}
+	}()
 	sum, err := rec.SHA256()
 	if err != nil {
 		return nil, err
 	}
-	rec, did, err := prepare.Apply(rec, e.plan.Steps)
+	next, did, err := prepare.Apply(rec, e.plan.Steps)
 	if err != nil {
 		return nil, err
 	}
-	s, err := e.survey(rec, e.shown(file))
-	if err != nil {
+	rec = next
+	if s, err = e.survey(rec, e.shown(file)); err != nil {
 		return nil, err
 	}
 	if !math.IsNaN(e.plan.Level) {
 		if s, did, err = e.levelled(s, did); err != nil {
 			return nil, err
 		}
+		rec = s.rec
 	}
 	s.clip.SHA256 = sum
 	s.clip.Preparation = append(s.clip.Preparation, did...)
@@ -105,9 +112,8 @@ func (e *engine) shown(path string) string {
 // totalSamples is the length of a reading pass: every sample is read twice.
 func totalSamples(files []string) (n int64) {
 	for _, f := range files {
-		if r, err := samples.Open(f); err == nil {
-			n += 2 * r.Info().Frames * int64(r.Info().Channels)
-			r.Close()
+		if info, err := samples.Peek(f); err == nil {
+			n += 2 * info.Frames * int64(info.Channels)
 		}
 	}
 	return n

@@ -1,0 +1,90 @@
+package bench
+
+import (
+	"context"
+	"math"
+	"os"
+	"path/filepath"
+	"testing"
+)
+
+// realRecordings are those of the Debian packages pocketsphinx-testdata and
+// alsa-utils, and of FEWBITS_RECORDINGS; without any the test is skipped.
+func realRecordings(t *testing.T) []string {
+	t.Helper()
+	var found []string
+	for _, pattern := range []string{
+		"/usr/share/pocketsphinx/test/data/*/*.wav", "/usr/share/sounds/alsa/[FRS]*.wav",
+		filepath.Join(os.Getenv("FEWBITS_RECORDINGS"), "*.wav"),
+	} {
+		names, err := filepath.Glob(pattern)
+		if err != nil {
+			t.Fatal(err)
+		}
+		found = append(found, names...)
+	}
+	if len(found) < 5 {
+		t.Skip("no real recordings: install Debian's pocketsphinx-testdata and alsa-utils, or set FEWBITS_RECORDINGS")
+	}
+	return found
+}
+
+// pooledOf is a design's pooled figure.
+func pooledOf(r *Results, spec, name string) float64 { return float64(figure(r, spec, name)) }
+
+// TestFactsOfTheTrade runs the whole job on real speech at active levels 30 dB
+// apart (common practice, no source): mu-law's SNR moves by a few dB where
+// uniform loses about a dB per dB; six bits more are worth about 36 dB to a
+// uniform quantizer; G.711 stays within a dB of the smooth mu-law.
+func TestFactsOfTheTrade(t *testing.T) {
+	inputs := realRecordings(t)
+	run := func(level float64) *Results {
+		p := planFor(t, t.TempDir(), inputs, "mu-law:8", "uniform:8", "uniform:14", "g711-mu")
+		p.Audio, p.Level = false, level
+		r, _, err := Run(context.Background(), p)
+		if err != nil {
+			t.Fatal(err)
+		}
+		return r
+	}
+	loud, faint := run(-26), run(-56)
+	mu := pooledOf(loud, "mu-law:8", SNR) - pooledOf(faint, "mu-law:8", SNR)
+	uniform := pooledOf(loud, "uniform:8", SNR) - pooledOf(faint, "uniform:8", SNR)
+	if !(mu > 0 && mu < 12) || !(uniform > 24 && uniform < 34) {
+		t.Errorf("over 30 dB of level mu-law moves by %.1f dB, uniform by %.1f", mu, uniform)
+	}
+	if six := pooledOf(loud, "uniform:14", SNR) - pooledOf(loud, "uniform:8", SNR); math.Abs(six-36.1) > 1.5 {
+		t.Errorf("six more bits give %.2f dB, want about 36.1", six)
+	}
+	if d := pooledOf(loud, "mu-law:8", SNR) - pooledOf(loud, "g711-mu", SNR); math.Abs(d) > 1 {
+		t.Errorf("G.711 mu-law is %.2f dB from the smooth law", d)
+	}
+	for _, c := range loud.Clips {
+		if math.Abs(float64(c.ActiveDBov)+26) > 0.15 || !(c.ActiveDBov >= c.LevelDBov) {
+			t.Errorf("%s: active level %.2f, level %.2f after --level -26", c.File, float64(c.ActiveDBov), float64(c.LevelDBov))
+		}
+	}
+}
+
+// TestSegmentalAimWins: designed on itself each recording gains over mu-law by
+// the figure the aim names, on the mean more than 1 dB; a clipped recording
+// (0.9 dB) gains least.
+func TestSegmentalAimWins(t *testing.T) {
+	sum := 0.0
+	for _, file := range realRecordings(t)[:5] {
+		p := planFor(t, t.TempDir(), []string{file}, "mu-law:4", "lloyd-max:4,from=data,aim=segsnr")
+		p.Audio = false
+		r, _, err := Run(context.Background(), p)
+		if err != nil {
+			t.Fatal(err)
+		}
+		gain := pooledOf(r, "lloyd-max:4,from=data,aim=segsnr", SegSNR) - pooledOf(r, "mu-law:4", SegSNR)
+		if !(gain > 0.8) {
+			t.Errorf("%s: aim=segsnr gains %.2f dB over mu-law at 4 bits", file, gain)
+		}
+		sum += gain
+	}
+	if !(sum/5 > 1) {
+		t.Errorf("mean gain %.2f dB", sum/5)
+	}
+}
