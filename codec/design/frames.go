@@ -3,15 +3,44 @@ package design
 import (
 	"fmt"
 	"math"
-	"slices"
 )
 
 // Take is what one recording gives to a segmental design: its in-range frames
 // as 16-bit words (amplitude = word / 32768) and its lsb (full scale = 1.0),
 // whose rounding noise n lsb^2/12 is the least error the open value counts.
+//
+// Gains, in dB, take the frames once at each gain instead of as they are,
+// saturating at the words' ends: with -6, 0, 6 a table serves talkers louder
+// or softer than these as well, for less on these themselves.
 type Take struct {
 	Frames [][]int16
 	LSB    float64
+	Gains  []float64
+}
+
+// atGains returns a take as it is, or one for each gain.
+func (t Take) atGains() ([]Take, error) {
+	if len(t.Gains) == 0 {
+		return []Take{t}, nil
+	}
+	var out []Take
+	for _, db := range t.Gains {
+		if !(math.Abs(db) <= 60) {
+			return nil, fmt.Errorf("gain %g dB: want -60 to 60", db)
+		}
+		g := math.Pow(10, db/20)
+		scaled := Take{LSB: math.Min(1, t.LSB*g)}
+		for _, words := range t.Frames {
+			louder := make([]int16, len(words))
+			for i, w := range words {
+				x := math.RoundToEven(float64(w) * g)
+				louder[i] = int16(math.Max(math.MinInt16, math.Min(math.MaxInt16, x)))
+			}
+			scaled.Frames = append(scaled.Frames, louder)
+		}
+		out = append(out, scaled)
+	}
+	return out, nil
 }
 
 // Frames are the frames of one or more recordings on a common grid of values;
@@ -34,11 +63,19 @@ type Frames struct {
 // Frames without signal are left out; none with signal is an error.
 func NewFrames(takes ...Take) (Frames, error) {
 	f := Frames{Starts: []int{0}, Lower: -10, Upper: 35, OpenUpper: 100}
-	bin := f.gridOf(takes)
+	var all []Take
 	for i, t := range takes {
 		if !(t.LSB >= 0 && t.LSB <= 1) {
 			return Frames{}, fmt.Errorf("recording %d: lsb %g: want 0 to 1", i, t.LSB)
 		}
+		scaled, err := t.atGains()
+		if err != nil {
+			return Frames{}, fmt.Errorf("recording %d: %w", i, err)
+		}
+		all = append(all, scaled...)
+	}
+	bin := f.gridOf(all)
+	for _, t := range all {
 		for _, words := range t.Frames {
 			f.push(words, bin, t.LSB)
 		}
@@ -104,87 +141,4 @@ func (f Frames) Histogram() Histogram {
 		}
 	}
 	return h
-}
-
-// Mean returns the mean limited SNR of the frames in dB, segsnr_db or, with
-// open, segsnr_open_db, when coded with a staircase of the given thresholds
-// and values (ties to the upper cell).
-func (f Frames) Mean(thresholds, values []float64, open bool) float64 {
-	return f.meanDB(f.errors(f.loss(thresholds, values), nil), open)
-}
-
-// loss is the squared error of each value of the grid.
-func (f Frames) loss(thresholds, values []float64) []float64 {
-	loss := make([]float64, len(f.Grid))
-	k := 0
-	for i, x := range f.Grid {
-		for k < len(thresholds) && thresholds[k] <= x {
-			k++
-		}
-		loss[i] = (x - values[k]) * (x - values[k])
-	}
-	return loss
-}
-
-// errors sums loss (squared error of each bin) over each frame.
-func (f Frames) errors(loss, into []float64) []float64 {
-	into = slices.Grow(into[:0], f.Len())[:f.Len()]
-	for i := range into {
-		var a, b float64
-		bins := f.Bins[f.Starts[i]:f.Starts[i+1]]
-		for len(bins) >= 2 {
-			a += loss[bins[0]]
-			b += loss[bins[1]]
-			bins = bins[2:]
-		}
-		if len(bins) == 1 {
-			a += loss[bins[0]]
-		}
-		into[i] = a + b
-	}
-	return into
-}
-
-// meanDB is the exact measure from the frames' error energies.
-func (f Frames) meanDB(errors []float64, open bool) float64 {
-	var sum float64
-	for i, e := range errors {
-		sum += f.frameDB(i, e, open)
-	}
-	return sum / float64(len(errors))
-}
-
-// frameDB is the limited SNR of frame i with error energy e.
-func (f Frames) frameDB(i int, e float64, open bool) float64 {
-	upper := f.Upper
-	if open {
-		upper, e = f.OpenUpper, math.Max(e, f.Floor[i])
-	}
-	if e == 0 {
-		return upper
-	}
-	return math.Max(f.Lower, math.Min(upper, 10*math.Log10(f.Signal[i]/e)))
-}
-
-// folded returns the frames on |x|, with a bin for 0 even where none occurs.
-func (f Frames) folded() Frames {
-	half := f
-	at := map[float64]uint16{0: 0}
-	h := Histogram{Values: f.Grid, Weights: make([]float64, len(f.Grid))}.Fold()
-	half.Grid = h.Values
-	if h.Values[0] != 0 {
-		half.Grid = append([]float64{0}, h.Values...)
-	}
-	for i, x := range half.Grid {
-		at[x] = uint16(i)
-	}
-	to := make([]uint16, len(f.Grid))
-	for i, x := range f.Grid {
-		to[i] = at[math.Abs(x)]
-	}
-	half.Bins = make([]uint16, len(f.Bins))
-	for i, b := range f.Bins {
-		half.Bins[i] = to[b]
-	}
-	return half
 }
