@@ -4,9 +4,7 @@ import (
 	"cmp"
 	"math"
 	"slices"
-	"strconv"
 	"strings"
-	"unicode"
 
 	"fewbits/cmd/fewbits/internal/bench"
 )
@@ -130,55 +128,6 @@ func (b *book) optimistic() (specs []string) {
 	return specs
 }
 
-// dash is what stands for an undefined number.
-const dash = "–"
-
-// fixed prints v with so many decimals, a dash where undefined.
-func fixed(v bench.Num, decimals int) string {
-	if !v.Defined() {
-		return dash
-	}
-	s := strconv.FormatFloat(float64(v), 'f', decimals, 64)
-	if strings.Trim(s, "-0.") == "" {
-		s = strings.TrimPrefix(s, "-")
-	}
-	return s
-}
-
-// span prints an interval, empty where undefined.
-func span(v [2]bench.Num) string {
-	if !v[0].Defined() || !v[1].Defined() {
-		return ""
-	}
-	return fixed(v[0], 1) + " to " + fixed(v[1], 1)
-}
-
-// percent prints a share: enough digits that a few samples do not look like none.
-func percent(v bench.Num) string {
-	p := 100 * float64(v)
-	switch {
-	case !v.Defined():
-		return dash
-	case p == 0:
-		return "0"
-	case p < 0.001:
-		return "<0.001"
-	case p < 0.1:
-		return fixed(bench.Num(p), 3)
-	}
-	return fixed(bench.Num(p), 1)
-}
-
-// plain makes text safe for a terminal: what is not printable is escaped.
-func plain(s string) string {
-	return strings.Map(func(r rune) rune {
-		if unicode.IsPrint(r) {
-			return r
-		}
-		return '\uFFFD'
-	}, s)
-}
-
 // short is the name of a figure in a table head, with its unit.
 func (b *book) short(name string) string {
 	switch name {
@@ -198,22 +147,3 @@ func (b *book) short(name string) string {
 	}
 	return name
 }
-
-// sentence ends a text as one.
-func sentence(s string) string {
-	s = strings.TrimSpace(s)
-	if s == "" {
-		return ""
-	}
-	r := []rune(s)
-	// A word such as segsnr_db or a spec keeps its case.
-	if word, _, _ := strings.Cut(s, " "); !strings.ContainsAny(word, "_:.=/0123456789") {
-		r[0] = unicode.ToUpper(r[0])
-	}
-	if !strings.ContainsRune(".!?", r[len(r)-1]) {
-		r = append(r, '.')
-	}
-	return string(r)
-}
-
-var nan = math.NaN()

@@ -121,3 +121,19 @@ func five(v bench.Num) string {
 	}
 	return strconv.FormatFloat(float64(v), 'g', 5, 64)
 }
+
+// findingsTable is what was found wrong with the recordings.
+func (b *book) findingsTable() gridTable {
+	g := gridTable{ID: "findings", Caption: "What was found on the recordings"}
+	g.Head = append(words("recording", "weight", "kind"), headCell{Text: "channel"}, headCell{Text: "value"}, headCell{Text: "unit", Words: true},
+		headCell{Text: "finding", Words: true, Long: true}, headCell{Text: "advice", Words: true, Long: true})
+	for _, c := range b.Clips {
+		for _, f := range c.Findings {
+			g.Rows = append(g.Rows, []cell{
+				said(c.File), said(f.Severity), said(f.Kind), integer(int64(f.Channel)),
+				number(f.Value, strconv.FormatFloat(f.Value, 'g', 4, 64)), said(f.Unit), said(f.Sentence), said(f.Advice),
+			})
+		}
+	}
+	return g
+}

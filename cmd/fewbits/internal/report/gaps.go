@@ -39,14 +39,13 @@ func gaps(b *book, bits int) *plate {
 		Y: drawing.Scale{Max: 1, From: h - 44, To: 4},
 	}
 	p.Grid(drawing.Ticks(p.X.Min, p.X.Max, 9), nil, "behind the best mean, dB of "+b.Leading, "")
-	f.Line(drawing.Ink{Role: "ink", Width: 1.4}, drawing.Point{X: p.X.At(0), Y: 4}, drawing.Point{X: p.X.At(0), Y: h - 44})
 	var said []string
 	for i, d := range of {
 		said = append(said, gap(b, p, d, 12+row*float64(i)))
 	}
 	f.Text = strings.Join(said, "; ") + "."
 	return &plate{Figure: f, Turn: bitsTurn(bits), Caption: "Bars: 95 % intervals of the differences, taken together; the mark is their middle. " +
-		"A bar that reaches the upright line cannot be told from the best. " + capital(b.intervalOf()) + " is compared; " + b.Leading + " pooled over all frames may name another winner where designs are that close."}
+		"A bar that reaches the upright strokes at 0 cannot be told from the best. " + capital(b.intervalOf()) + " is compared; " + b.Leading + " pooled over all frames may name another winner where designs are that close."}
 }
 
 // gap draws one design's row at y and says it.
@@ -61,6 +60,8 @@ func gap(b *book, p drawing.Panel, d *bench.Design, y float64) string {
 	}
 	n, mid := b.series(d.Spec), y+19
 	p.F.Words("tick", 22, y+9, drawing.Start, d.Spec+"  ·  "+words)
+	zero := p.X.At(0)
+	p.F.Line(drawing.Ink{Role: "ink", Width: 1.6}, drawing.Point{X: zero, Y: mid - 7}, drawing.Point{X: zero, Y: mid + 8})
 	at := 0.0
 	if words != "best mean" {
 		at = float64(v[0]+v[1]) / 2

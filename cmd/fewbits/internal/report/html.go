@@ -54,27 +54,27 @@ func HTML(w io.Writer, r *bench.Results, t *bench.Traces, o Options) error {
 
 // content is what the template shows.
 type content struct {
-	B                             *book
-	Policy                        string
-	Style, Script                 template.HTML
-	Title, Facts, Why             string
-	Parts                         []section
-	Answers                       []answer
-	Cautions                      []string
-	Sets                          map[string]*set
-	Time                          *shown
-	Tracks                        []track
-	low, top                      float64 // of the SNR axis over time
-	First, Second                 int
-	Audio                         bool
-	FirstAudio                    string
-	Models, Classes, Matrix, Fits *gridTable
-	Pooled                        []gridTable
-	Designs, Clips                gridTable
-	Figures                       []string
-	Command, Checksums            string
-	Settings                      []bench.Definition
-	Data                          template.JS
+	B                                       *book
+	Policy                                  string
+	Style, Script                           template.HTML
+	Title, Facts, Why                       string
+	Parts                                   []section
+	Answers                                 []answer
+	Cautions                                []string
+	Sets                                    map[string]*set
+	Time                                    *shown
+	Tracks                                  []track
+	low, top                                float64 // of the SNR axis over time
+	First, Second                           int
+	Audio                                   bool
+	FirstAudio                              string
+	Models, Classes, Matrix, Fits, Findings *gridTable
+	Pooled                                  []gridTable
+	Designs, Clips                          gridTable
+	Figures                                 []string
+	Command, Checksums                      string
+	Settings                                []bench.Definition
+	Data                                    template.JS
 }
 
 type section struct{ ID, Short string }
@@ -91,6 +91,7 @@ func compose(b *book, t *bench.Traces, o Options) (*content, error) {
 	p.Models = unlessEmpty(modelsTable(t))
 	p.Classes = unlessEmpty(idleTable(b, t))
 	p.Fits = unlessEmpty(b.fitsTable())
+	p.Findings = unlessEmpty(b.findingsTable())
 	if len(b.Designs) > 0 {
 		p.Matrix = unlessEmpty(b.matrix(b.Leading))
 	}

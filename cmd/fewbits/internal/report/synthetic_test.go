@@ -140,7 +140,11 @@ func (g *invention) clip(i int) bench.Clip {
 		OptimalTableDB: bench.Num(math.NaN()),
 	}
 	if i%4 == 1 {
-		c.Warnings = []string{"3 runs of 4 or more samples at full scale: clipped before it came here"}
+		f := bench.Finding{
+			Channel: 1, Kind: "clipped", Severity: "warning", Value: 3, Unit: "runs",
+			Sentence: "clipped: 3 runs of 4 or more samples at full scale", Advice: "record again with the gain lower",
+		}
+		c.Findings, c.Warnings = []bench.Finding{f}, []string{f.Sentence + ": " + f.Advice}
 	}
 	for k, model := range []string{"laplacian", "gaussian", "gamma", "gamma-free", "generalized-gaussian"} {
 		for _, over := range []string{"all", "in-range"} {

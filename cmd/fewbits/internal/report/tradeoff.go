@@ -1,7 +1,6 @@
 package report
 
 import (
-	"cmp"
 	"fmt"
 	"math"
 	"slices"
@@ -128,34 +127,6 @@ func whisker(p drawing.Panel, series int, x float64, v [2]bench.Num, mean bench.
 	}
 }
 
-// drawBounds draws the models' bounds and names them, the highest first.
-func drawBounds(p drawing.Panel, bounds []bench.Bound) {
-	list := slices.Clone(bounds)
-	slices.SortStableFunc(list, func(x, y bench.Bound) int { return cmp.Compare(height(y), height(x)) })
-	var names []string
-	for _, bound := range list {
-		var xs, ys []float64
-		for j, x := range bound.Bits {
-			y := float64(bound.SNRDB[j])
-			if !(x >= p.X.Min && x <= p.X.Max && y >= p.Y.Min && y <= p.Y.Max) {
-				y = nan
-			}
-			xs, ys = append(xs, x), append(ys, y)
-		}
-		p.Curve(drawing.Ink{Role: "axis", Width: 1.3, Dash: []float64{1.5, 2.5}}, xs, ys)
-		names = append(names, bound.Model)
-	}
-	p.F.Words("tick", p.X.From+10, p.Y.To+14, drawing.Start, "grey dots: Shannon's bound, from above "+listed(names))
-}
-
-// height is a bound's SNR at its first number of bits.
-func height(b bench.Bound) float64 {
-	if len(b.SNRDB) == 0 {
-		return math.Inf(-1)
-	}
-	return float64(b.SNRDB[0]) - 20*math.Log10(2)*b.Bits[0]
-}
-
 func (b *book) cost(d *bench.Design, name string) float64 {
 	if name == "bits" {
 		return float64(d.Bits)
@@ -183,24 +154,4 @@ func tradeoffY(b *book, quality string) [2]float64 {
 		}
 	}
 	return [2]float64{math.Floor(lo/5-0.1) * 5, math.Ceil(hi/5+0.1) * 5}
-}
-
-// full is every digit of v.
-func full(v float64) string { return strconv.FormatFloat(v, 'g', -1, 64) }
-
-// trim prints at most two decimals.
-func trim(v float64) string {
-	return strconv.FormatFloat(math.Round(100*v)/100, 'f', -1, 64)
-}
-
-func slug(name string) string {
-	return strings.ReplaceAll(strings.TrimSuffix(strings.TrimSuffix(name, "_db"), "_bits"), "_", "-")
-}
-
-// capital begins a text with a capital letter.
-func capital(s string) string {
-	if s == "" {
-		return s
-	}
-	return strings.ToUpper(s[:1]) + s[1:]
 }

@@ -156,7 +156,15 @@
   load();
   paint();
   cursor(0);
-  if (!player) return;
+  const at = e => {
+    const box = svg.getBoundingClientRect();
+    const x = (e.clientX - box.left) / box.width * svg.viewBox.baseVal.width;
+    return Math.min(now.end, Math.max(0, (x - g.left) / (g.right - g.left) * now.end));
+  };
+  if (!player) {
+    svg.addEventListener('click', e => cursor(at(e)));
+    return;
+  }
   cue(false);
   $('hear').addEventListener('change', () => cue(true));
   player.addEventListener('error', () => {
@@ -169,9 +177,7 @@
   player.addEventListener('play', follow);
   player.addEventListener('seeked', () => cursor(player.currentTime));
   svg.addEventListener('click', e => {
-    const box = svg.getBoundingClientRect();
-    const x = (e.clientX - box.left) / box.width * svg.viewBox.baseVal.width;
-    const s = Math.min(now.end, Math.max(0, (x - g.left) / (g.right - g.left) * now.end));
+    const s = at(e);
     if (player.readyState === 0) {
       player.addEventListener('loadedmetadata', () => { player.currentTime = s; }, { once: true });
       player.load();
