@@ -20,8 +20,8 @@ import (
 // 2x. Time O(bins log bins) per penalty, memory linear in the bins.
 //
 // Where h has no more distinct values than levels the error is 0: every value
-// is a level, and spare levels halve, third, ... the widest gaps between
-// them, so that the table keeps n distinct thresholds (see spread).
+// is a level, and spare levels cut the widest gaps between them evenly, so
+// that the table keeps n distinct thresholds (see spread).
 func ExactData(h Histogram, n int, sym Symmetry) (Solution, error) {
 	if err := h.check(); err != nil {
 		return Solution{}, err
@@ -29,12 +29,10 @@ func ExactData(h Histogram, n int, sym Symmetry) (Solution, error) {
 	if n < 1 || n > 1<<16 {
 		return Solution{}, fmt.Errorf("%d levels: want 1 to 65536", n)
 	}
-	return exactFrom(h, n, sym, 0), nil
+	return exactData(h, n, sym), nil
 }
 
-// exactFrom is ExactData with a first penalty (per cell, amplitude^2 times
-// weight); 0 means the high-resolution estimate.
-func exactFrom(h Histogram, n int, sym Symmetry, penalty float64) Solution {
+func exactData(h Histogram, n int, sym Symmetry) Solution {
 	half, cells, pinned := h, n, false
 	if sym == Mirror {
 		half, cells, pinned = h.Fold(), (n+1)/2, n%2 == 1
@@ -48,11 +46,15 @@ func exactFrom(h Histogram, n int, sym Symmetry, penalty float64) Solution {
 		values = spread(half.Values, cells)
 		thresholds = middles(values)
 		if spare := cells - len(half.Values); spare > 0 {
-			s.Notes = append(s.Notes, fmt.Sprintf("%d distinct values for %d levels: %d spare levels lie in the widest gaps", len(half.Values), cells, spare))
+			s.Notes = append(s.Notes, spareNote(len(half.Values), cells, sym))
 		}
 	} else {
 		var edges []int
-		edges, s.Rounds = optimalEdges(half, cells, pinned, penalty)
+		var proven bool
+		edges, s.Rounds, proven = optimalEdges(half, cells, pinned)
+		if !proven { // rounding ate the proof: never seen
+			s.Proof, s.Starts = Local, 1
+		}
 		values, thresholds = placed(half, edges, pinned)
 	}
 	if sym == Mirror {
@@ -63,8 +65,17 @@ func exactFrom(h Histogram, n int, sym Symmetry, penalty float64) Solution {
 	return s
 }
 
-// optimalEdges returns the bin edges of the optimal cells.
-func optimalEdges(h Histogram, cells int, pinned bool, penalty float64) ([]int, int) {
+func spareNote(distinct, cells int, sym Symmetry) string {
+	what, side := "values", ""
+	if sym == Mirror {
+		what, side = "magnitudes", " a side"
+	}
+	return fmt.Sprintf("%d distinct %s for %d levels%s: no error, %d spare levels%s lie in the widest gaps",
+		distinct, what, cells, side, cells-distinct, side)
+}
+
+// optimalEdges returns the bin edges of the optimal cells (see searchPath).
+func optimalEdges(h Histogram, cells int, pinned bool) (edges []int, rounds int, proven bool) {
 	var c cellCost
 	unit := 1.0
 	if w := newWordSums(h, pinned); w != nil {
@@ -72,12 +83,9 @@ func optimalEdges(h Histogram, cells int, pinned bool, penalty float64) ([]int, 
 	} else {
 		c = newRealSums(h, pinned)
 	}
-	if !(penalty > 0) {
-		penalty = panterDitePenalty(h, cells)
-	}
-	edges, rounds := searchPath(c, len(h.Values), cells, penalty/unit)
+	edges, rounds, proven = searchPath(c, len(h.Values), cells, panterDitePenalty(h, cells)/unit)
 	settle(c, edges)
-	return edges, rounds
+	return edges, rounds, proven
 }
 
 // panterDitePenalty is -dD/dn of the high-resolution law D = (integral of

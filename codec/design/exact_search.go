@@ -21,30 +21,33 @@ func (f support) unless(s support, inside bool) support {
 	return f
 }
 
-// searchPath returns a least-cost path of exactly n edges and the number of
-// penalties tried. Under the quadrangle inequality the least cost F(k) of k
+// searchPath returns a least-cost path of exactly n edges, the number of
+// penalties tried, and whether the path is proven to cost the least: no path
+// of n edges costs less than the cheapest of any length with a penalty, less
+// n penalties. Under the quadrangle inequality the least cost F(k) of k
 // edges is convex in k, so every n has a penalty at which it is among the
 // optimal lengths; where several lengths share that penalty, swap makes the
 // path of n edges out of a shorter and a longer one. Source: A. Aggarwal,
 // B. Schieber, T. Tokuyama, Discrete Comput. Geom. 12 (1994), theorem and
 // lemma from memory, proofs redone in swap.
-func searchPath(c cellCost, bins, n int, guess float64) (edges []int, rounds int) {
+func searchPath(c cellCost, bins, n int, guess float64) (edges []int, rounds int, proven bool) {
 	p := newPenalised(c, bins)
 	few := support{[]int{0, bins}, c.cost(0, bins), math.Inf(1)}
 	many := support{everyBin(bins), 0, 0}
 	if n == 1 || n == bins {
-		return map[bool][]int{true: few.edges, false: many.edges}[n == 1], 0
+		return map[bool][]int{true: few.edges, false: many.edges}[n == 1], 0, true
 	}
 	penalty, line := guess, math.Inf(1)
-	for rounds = 1; rounds <= 200; rounds++ {
+	for {
+		rounds++
 		p.run(penalty)
 		s := support{edges: p.path(), penalty: penalty}
 		k := s.len()
 		if k == n {
-			return s.edges, rounds
+			return s.edges, rounds, true
 		}
 		inside := k > few.len() && k < many.len()
-		if p.best[bins] >= line*(1-1e-14) || !inside && !math.IsInf(line, 1) {
+		if p.best[bins] >= line*(1-1e-14) || rounds >= 200 || !inside && !math.IsInf(line, 1) {
 			break
 		}
 		s.cost = pathCost(c, s.edges)
@@ -55,7 +58,9 @@ func searchPath(c cellCost, bins, n int, guess float64) (edges []int, rounds int
 		}
 		penalty, line = nextPenalty(few, many, n, rounds)
 	}
-	return swap(few.edges, many.edges, n), rounds
+	edges = swap(few.edges, many.edges, n)
+	gap := pathCost(c, edges) + penalty*float64(n) - p.best[bins]
+	return edges, rounds, gap <= 1e-12*p.best[bins]
 }
 
 // nextPenalty returns the penalty to try next: now the one at which few and

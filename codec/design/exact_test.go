@@ -116,6 +116,9 @@ func TestExactIsBruteForce(t *testing.T) {
 // wellFormed checks what any optimum must satisfy: order, mirror image,
 // midpoints, centroids (0 in the middle cell of an odd mirror table).
 func wellFormed(t interface{ Fatalf(string, ...any) }, h Histogram, n int, sym Symmetry, s Solution) {
+	if s.Proof != Exact {
+		t.Fatalf("%v, n = %d: %s", h, n, s.Proof)
+	}
 	if len(s.Values) != n || len(s.Thresholds) != n-1 {
 		t.Fatalf("%d values, %d thresholds for %d levels", len(s.Values), len(s.Thresholds), n)
 	}
@@ -209,6 +212,9 @@ func TestExactIsPlainDP(t *testing.T) {
 			s, err := ExactData(h, n, Free)
 			if err != nil {
 				t.Fatal(err)
+			}
+			if s.Proof != Exact {
+				t.Errorf("trial %d, n = %d: %s", trial, n, s.Proof)
 			}
 			want := plainDP(h, n) / h.Total()
 			if !(math.Abs(s.MSE-want) <= 1e-11*want) {

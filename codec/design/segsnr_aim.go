@@ -93,7 +93,7 @@ func (a *segAim) optimum(w []float64) segTable {
 		values := spread(h.Values, a.cells)
 		return a.code(values, middles(values))
 	}
-	edges, _ := optimalEdges(h, a.cells, a.pinned, 0)
+	edges, _, _ := optimalEdges(h, a.cells, a.pinned)
 	return a.code(placed(h, edges, a.pinned))
 }
 

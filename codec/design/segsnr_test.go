@@ -320,15 +320,17 @@ func TestSegSNRRefuses(t *testing.T) {
 }
 
 func TestSegSNRWithMoreLevelsThanWords(t *testing.T) {
-	f, err := NewFrames(Take{Frames: [][]int16{{3, -5, 0, 9}}, LSB: 1.0 / 32768})
-	if err != nil {
-		t.Fatal(err)
-	}
-	for _, n := range []int{8, 9, 64} {
-		for _, sym := range []Symmetry{Mirror, Free} {
-			s, err := SegSNR(f, n, sym, false, SegOptions{})
-			if err != nil || s.Aim != 35 || len(s.Values) != n {
-				t.Errorf("n = %d: %g dB, %d values, %v: want 35 dB, no error", n, s.Aim, len(s.Values), err)
+	for _, words := range [][]int16{{3, -5, 0, 9}, {7, 7, 7}, {-32768}, {0, 1}} {
+		f, err := NewFrames(Take{Frames: [][]int16{words}, LSB: 1.0 / 32768})
+		if err != nil {
+			t.Fatal(err)
+		}
+		for _, n := range []int{8, 9, 64} {
+			for _, sym := range []Symmetry{Mirror, Free} {
+				s, err := SegSNR(f, n, sym, false, SegOptions{})
+				if err != nil || s.Aim != 35 || len(s.Values) != n {
+					t.Errorf("%v, n = %d: %g dB, %d values, %v: want 35 dB, no error", words, n, s.Aim, len(s.Values), err)
+				}
 			}
 		}
 	}
