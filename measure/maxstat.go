@@ -164,14 +164,12 @@ func each(n int, worker func() func(int) float64) []float64 {
 	workers := runtime.GOMAXPROCS(0)
 	var group sync.WaitGroup
 	for w := range workers {
-		group.Add(1)
-		go func() {
-			defer group.Done()
+		group.Go(func() {
 			work := worker()
 			for i := w; i < n; i += workers {
 				out[i] = work(i)
 			}
-		}()
+		})
 	}
 	group.Wait()
 	return out
