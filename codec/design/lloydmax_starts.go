@@ -39,9 +39,10 @@ func (s domain) unfold(y []float64) []float64 {
 // levels, 1/4 gives the tails more.
 var startPowers = []float64{1. / 3, 0.25}
 
-// powers are the starts a density deserves: one where the optimum is unique.
-func powers(d Density) []float64 {
-	if d.LogConcave() {
+// powers are the starts a table deserves: one where the optimum is unique, or
+// where so many levels follow the companding law closely.
+func powers(d Density, n int) []float64 {
+	if d.LogConcave() || n > 128 {
 		return startPowers[:1]
 	}
 	return startPowers
@@ -51,7 +52,7 @@ func powers(d Density) []float64 {
 func mirrorStarts(d Density, n int) (tries []attempt) {
 	_, hi := d.Support()
 	half := domain{d: d, hi: hi, mirror: true, odd: n%2 == 1}
-	for _, p := range powers(d) {
+	for _, p := range powers(d, n) {
 		tries = append(tries, attempt{half, upper(newLaw(d, true, toThe(p)), n, 1, false)})
 	}
 	return tries
@@ -59,7 +60,7 @@ func mirrorStarts(d Density, n int) (tries []attempt) {
 
 // wholeStarts are companders on the whole support.
 func wholeStarts(d Density, n int) (tries []attempt) {
-	for _, p := range powers(d) {
+	for _, p := range powers(d, n) {
 		l := newLaw(d, false, toThe(p))
 		y := make([]float64, n)
 		for k := range y {

@@ -63,7 +63,7 @@ func (m Gamma) Entropy() float64 {
 
 // Cell integrates by quadrature, by a series next to 0.
 func (m Gamma) Cell(a, b float64) (prob, offset, about float64) {
-	return scaledCell(&m.d, m.Scale, a, b)
+	return mirrorCell(&m.d, m.Scale, a, b)
 }
 
 var _ Model = Gamma{}

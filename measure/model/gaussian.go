@@ -51,7 +51,7 @@ func (m Gaussian) Entropy() float64 { return math.Log2(m.Scale * math.Sqrt(2*mat
 
 // Cell integrates by quadrature, by a series next to 0.
 func (m Gaussian) Cell(a, b float64) (prob, offset, about float64) {
-	return scaledCell(&normalHalfLine, m.Scale*math.Sqrt2, a, b)
+	return mirrorCell(&normalHalfLine, m.Scale*math.Sqrt2, a, b)
 }
 
 var _ Model = Gaussian{}

@@ -71,7 +71,7 @@ func (m GeneralizedGaussian) Entropy() float64 {
 
 // Cell integrates by quadrature, by a series next to 0.
 func (m GeneralizedGaussian) Cell(a, b float64) (prob, offset, about float64) {
-	return scaledCell(&m.d, m.Scale, a, b)
+	return mirrorCell(&m.d, m.Scale, a, b)
 }
 
 var _ Model = GeneralizedGaussian{}

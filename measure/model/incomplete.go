@@ -6,12 +6,6 @@ import (
 	"gonum.org/v1/gonum/mathext"
 )
 
-// scaledCell evaluates a cell of the even density d stretched by scale.
-func scaledCell(d *stacy, scale, a, b float64) (prob, offset, about float64) {
-	prob, offset, about = mirrorCell(a, b, func(a, w float64) moments { return d.cell(a/scale, w/scale) })
-	return prob, offset * scale, about * scale * scale
-}
-
 // mirrorCDF is the distribution function at x of a density whose |X| is below
 // |x| with probability P(s, y), the regularized incomplete gamma function.
 func mirrorCDF(s, y, x float64) float64 {

@@ -55,18 +55,20 @@ func (m Laplacian) Entropy() float64 { return math.Log2(2 * math.E * m.Scale) }
 
 // Cell is in closed form.
 func (m Laplacian) Cell(a, b float64) (prob, offset, about float64) {
-	return mirrorCell(a, b, m.half)
+	return mirrorCell(exponentialHalf{}, m.Scale, a, b)
 }
 
-func (m Laplacian) half(a, width float64) moments {
-	edge := math.Exp(-a/m.Scale) / 2
-	if math.IsInf(width, 1) {
-		return moments{edge, m.Scale, edge * m.Scale * m.Scale}
+// exponentialHalf is exp(-x)/2, x >= 0.
+type exponentialHalf struct{}
+
+func (exponentialHalf) cell(a, w float64) moments {
+	edge := math.Exp(-a) / 2
+	if math.IsInf(w, 1) {
+		return moments{edge, 1, edge}
 	}
-	w := width / m.Scale
 	area, centroid, variance := fallCell(w)
 	p := edge * area * w
-	return moments{p, centroid * width, p * variance * width * width}
+	return moments{p, centroid * w, p * variance * w * w}
 }
 
 var _ Model = Laplacian{}

@@ -10,8 +10,9 @@ import "math"
 // to two sides; the Gaussian, both gammas and the generalized Gaussian are
 // cases of it. x is in units of the scale.
 type stacy struct {
-	kappa, beta, c float64
-	kind           kind
+	kappa, beta float64
+	c, logC     float64
+	kind        kind
 }
 
 // kind picks the cheapest form of the fall f(a+u)/f(a).
@@ -30,6 +31,7 @@ func gammaHalfLine(shape float64) stacy {
 	if shape == 0.5 {
 		d.kind = halfGamma
 	}
+	d.logC = math.Log(d.c)
 	return d
 }
 
@@ -39,6 +41,7 @@ func generalHalfLine(shape float64) stacy {
 	if shape == 2 {
 		d.kind = normal
 	}
+	d.logC = math.Log(d.c)
 	return d
 }
 
@@ -59,7 +62,7 @@ func (d *stacy) pdf(x float64) float64 {
 
 // logPDF is ln f(x).
 func (d *stacy) logPDF(x float64) float64 {
-	l := math.Log(d.c) - d.power(x)
+	l := d.logC - d.power(x)
 	if d.kappa != 1 {
 		l += (d.kappa - 1) * math.Log(x)
 	}
@@ -88,18 +91,31 @@ func (d *stacy) root(y float64) float64 {
 	return math.Pow(y, 1/d.beta)
 }
 
-// fall returns f(a+u)/f(a) as a function of u, for a > 0.
-func (d *stacy) fall(a float64) func(u float64) float64 {
+// fall sets f to f(a+u)/f(a) at the nodes u of a panel [at, at+h], for a > 0;
+// y is a^beta.
+func (d *stacy) fall(r *rule, a, y, at, h float64, f *[maxNodes]float64) {
 	switch d.kind {
 	case normal:
-		return func(u float64) float64 { return math.Exp(-u * (2*a + u)) }
+		for i, x := range r.x {
+			u := at + h*x
+			f[i] = math.Exp(-u * (2*a + u))
+		}
 	case halfGamma:
-		return func(u float64) float64 { return math.Exp(-u) / math.Sqrt(1+u/a) }
+		for i, x := range r.x {
+			u := at + h*x
+			f[i] = math.Exp(-u) / math.Sqrt(1+u/a)
+		}
 	case freeGamma:
-		return func(u float64) float64 { return math.Exp((d.kappa-1)*math.Log1p(u/a) - u) }
+		for i, x := range r.x {
+			u := at + h*x
+			f[i] = math.Exp((d.kappa-1)*math.Log1p(u/a) - u)
+		}
+	default:
+		for i, x := range r.x {
+			u := at + h*x
+			f[i] = math.Exp(-y * math.Expm1(d.beta*math.Log1p(u/a)))
+		}
 	}
-	y := math.Pow(a, d.beta)
-	return func(u float64) float64 { return math.Exp(-y * math.Expm1(d.beta*math.Log1p(u/a))) }
 }
 
 // cell integrates from a >= 0 over a width w that may be infinite: a power
@@ -117,23 +133,49 @@ func (d *stacy) cell(a, w float64) moments {
 	return m
 }
 
-// panels integrates from a > 0 outwards until the rest no longer counts. The
-// weight is relative to f(a): the centroid is right even where f underflows.
-func (d *stacy) panels(a, w float64) (m moments) {
-	f := d.fall(a)
-	for at := 0.0; at < w; {
-		x := a + at
-		h, r := d.stride(x, w-at)
-		before := m
-		m.panel(r, at, h, f)
-		if at += h; r == &rules[3] && m.about-before.about < 1e-17*m.about && m.p-before.p < 1e-17*m.p {
-			break
-		}
-	}
+// panels integrates from a > 0.
+func (d *stacy) panels(a, w float64) moments {
+	m := d.relative(a, w)
 	edge := d.pdf(a)
 	m.p *= edge
 	m.about *= edge
 	return m
+}
+
+// relative integrates f(x)/f(a) from a > 0 outwards until the rest no longer
+// counts. The centroid is right even where f underflows.
+func (d *stacy) relative(a, w float64) (m moments) {
+	var f [maxNodes]float64
+	y := d.power(a)
+	for at := 0.0; at < w; {
+		h, r := d.stride(a+at, w-at)
+		before := m
+		d.fall(r, a, y, at, h, &f)
+		m.panel(r, at, h, &f)
+		if at += h; r == &rules[3] && m.about-before.about < 1e-17*m.about && m.p-before.p < 1e-17*m.p {
+			break
+		}
+	}
+	return m
+}
+
+// logMass is ln of the probability from a >= 0 over a width w; it does not
+// underflow.
+func (d *stacy) logMass(a, w float64) float64 {
+	if a == 0 {
+		return math.Log(d.cell(0, w).p)
+	}
+	h, r := d.stride(a, w)
+	if h < w {
+		return d.logPDF(a) + math.Log(d.relative(a, w).p)
+	}
+	var f [maxNodes]float64
+	d.fall(r, a, d.power(a), 0, w, &f)
+	var s float64
+	for i, wt := range r.w {
+		s += wt * f[i]
+	}
+	return d.logPDF(a) + math.Log(s*w)
 }
 
 // stride picks the next panel from x, at most limit wide, and its rule: along
