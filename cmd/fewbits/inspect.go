@@ -8,6 +8,7 @@ import (
 	"math"
 	"runtime"
 	"strconv"
+	"strings"
 
 	"github.com/jedib0t/go-pretty/v6/table"
 	"github.com/jedib0t/go-pretty/v6/text"
@@ -114,18 +115,18 @@ func clipsCSV(w io.Writer, clips []bench.Clip) error {
 		"crest_db", "dc", "noise_dbov", "zero_share", "effective_bits", "frames", "frames_in_range", "findings",
 	})
 	for _, c := range clips {
-		kinds := ""
+		var kinds strings.Builder
 		for i, f := range c.Findings {
 			if i > 0 {
-				kinds += " "
+				kinds.WriteString(" ")
 			}
-			kinds += f.Kind
+			kinds.WriteString(f.Kind)
 		}
 		out.Write([]string{
 			c.File, c.SHA256, c.Format, strconv.Itoa(c.RateHz), strconv.Itoa(c.Channels), full(bench.Num(c.Seconds)),
 			full(c.LevelDBov), full(c.ActiveDBov), full(c.Activity), full(c.PeakDB), full(c.CrestDB), full(c.DC),
 			full(c.NoiseDBov), full(c.ZeroShare), strconv.Itoa(c.EffectiveBits),
-			strconv.FormatInt(c.Frames, 10), strconv.FormatInt(c.FramesInRange, 10), kinds,
+			strconv.FormatInt(c.Frames, 10), strconv.FormatInt(c.FramesInRange, 10), kinds.String(),
 		})
 	}
 	out.Flush()

@@ -8,6 +8,7 @@ import (
 	"os"
 	"os/signal"
 	"runtime/debug"
+	"slices"
 	"strings"
 	"syscall"
 
@@ -149,11 +150,9 @@ func (c *choice) String() string { return c.value }
 func (c *choice) Type() string   { return strings.Join(c.words, "|") }
 
 func (c *choice) Set(v string) error {
-	for _, w := range c.words {
-		if v == w {
-			c.value = v
-			return nil
-		}
+	if slices.Contains(c.words, v) {
+		c.value = v
+		return nil
 	}
 	return fmt.Errorf("want one of %s", strings.Join(c.words, ", "))
 }

@@ -160,7 +160,7 @@ func parseBits(text string) ([]int, error) {
 	bad := usagef("--bits %q: want whole numbers from 1 to 16 such as 4,6,8 or a range such as 2..12", text)
 	seen := map[int]bool{}
 	var bits []int
-	for _, word := range strings.Split(text, ",") {
+	for word := range strings.SplitSeq(text, ",") {
 		from, to, isRange := strings.Cut(word, "..")
 		if !isRange {
 			to = from

@@ -20,11 +20,12 @@ func (e *engine) joinRows(clips []*survey, designs []Design) error {
 		return err
 	}
 	defer out.Close()
-	head := "clip,channel,frame,start_s,level_dbov,in_range"
+	var head strings.Builder
+	head.WriteString("clip,channel,frame,start_s,level_dbov,in_range")
 	for _, d := range designs {
-		head += "," + string(csvField(d.Spec))
+		head.WriteString("," + string(csvField(d.Spec)))
 	}
-	if _, err := io.WriteString(out, head+"\n"); err != nil {
+	if _, err := io.WriteString(out, head.String()+"\n"); err != nil {
 		return err
 	}
 	for _, s := range clips {

@@ -17,9 +17,7 @@ func inOrder[T any](ctx context.Context, n, workers int, work func(i int) (T, er
 	var group sync.WaitGroup
 	workers = max(1, min(workers, n))
 	for range workers {
-		group.Add(1)
-		go func() {
-			defer group.Done()
+		group.Go(func() {
 			for i, ok := o.claim(ctx, n, 4*workers); ok; i, ok = o.claim(ctx, n, 4*workers) {
 				t, err := work(i)
 				if err = o.deliver(i, t, err); err != nil {
@@ -27,7 +25,7 @@ func inOrder[T any](ctx context.Context, n, workers int, work func(i int) (T, er
 					return
 				}
 			}
-		}()
+		})
 	}
 	group.Wait()
 	if o.err == nil && o.taken < n {

@@ -111,13 +111,14 @@ func powers(s drawing.Scale) (out []drawing.Tick) {
 // power writes the whole power of ten next below 10^v.
 func power(v float64) string {
 	digits := []rune("⁰¹²³⁴⁵⁶⁷⁸⁹")
-	out := "10"
+	var out strings.Builder
+	out.WriteString("10")
 	for _, c := range fmt.Sprint(int(math.Floor(v))) {
 		if c == '-' {
-			out += "⁻"
+			out.WriteString("⁻")
 		} else {
-			out += string(digits[c-'0'])
+			out.WriteString(string(digits[c-'0']))
 		}
 	}
-	return out
+	return out.String()
 }

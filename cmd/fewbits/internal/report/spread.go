@@ -3,6 +3,7 @@ package report
 import (
 	"fmt"
 	"math"
+	"slices"
 	"strings"
 
 	"fewbits/cmd/fewbits/internal/bench"
@@ -77,10 +78,8 @@ func box(b *book, p drawing.Panel, d *bench.Design, s *bench.Spread, y float64) 
 	f := p.F
 	f.Words("tick", 22, y+9, drawing.Start, d.Spec+idleWords(s))
 	q := floats(s.Quantiles[:])
-	for _, v := range q {
-		if math.IsNaN(v) {
-			return
-		}
+	if slices.ContainsFunc(q, math.IsNaN) {
+		return
 	}
 	n, mid := b.series(d.Spec), y+19
 	at := func(v float64) drawing.Point { return drawing.Point{X: p.X.At(v), Y: mid} }

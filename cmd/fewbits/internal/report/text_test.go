@@ -60,7 +60,7 @@ func TestTerminalWidth(t *testing.T) {
 		if err := Terminal(&out, r, width, false); err != nil {
 			t.Fatal(err)
 		}
-		for _, line := range strings.Split(out.String(), "\n") {
+		for line := range strings.SplitSeq(out.String(), "\n") {
 			if n := utf8.RuneCountInString(line); n > width {
 				t.Fatalf("width %d: line of %d columns: %q", width, n, line)
 			}
