@@ -26,8 +26,10 @@ func pageOf(t testing.TB, r *bench.Results, traces *bench.Traces) string {
 // TestPageSize: 50 recordings and 12 designs stay below a megabyte.
 func TestPageSize(t *testing.T) {
 	r, traces := synthetic(50, 2000)
-	if n := len(pageOf(t, r, traces)); n > 1e6 {
-		t.Errorf("%d bytes", n)
+	n := len(pageOf(t, r, traces))
+	t.Logf("%d bytes", n)
+	if n > 1e6 {
+		t.Error("too large")
 	}
 }
 
@@ -102,6 +104,22 @@ func TestTracksEqualTraces(t *testing.T) {
 				}
 			}
 		}
+	}
+}
+
+// TestThin: merging keeps the extremes of the wave, the energy and the mean.
+func TestThin(t *testing.T) {
+	c := &bench.ClipTrace{
+		StepSeconds: 0.01, Min: []bench.Num{-1, -3, -2}, Max: []bench.Num{1, 2, 5}, LevelDBov: []bench.Num{-20, bench.Num(nan), -40},
+		SNR: map[string][]bench.Num{"a": {10, 20, bench.Num(nan)}},
+	}
+	got := thin(c, 2)
+	if got.StepSeconds != 0.02 || len(got.Max) != 2 || got.Min[0] != -3 || got.Max[0] != 2 || got.Max[1] != 5 ||
+		math.Abs(float64(got.LevelDBov[0])+20) > 1e-9 || got.SNR["a"][0] != 15 || got.SNR["a"][1].Defined() {
+		t.Errorf("%+v", got)
+	}
+	if thin(c, 3) != c {
+		t.Error("three points are three points")
 	}
 }
 

@@ -21,6 +21,7 @@ const (
 
 // overTime draws a clip: waveform, level, and SNR of two designs.
 func overTime(b *book, t *bench.Traces, c *bench.ClipTrace, a, z *bench.Design) plate {
+	c = thin(c, width)
 	f := canvas("time-"+odd.ReplaceAllString(clipName(b, c.File), "-"), "Over time: "+c.File, timeHeight)
 	end := float64(len(c.Max)) * c.StepSeconds
 	x := drawing.Scale{Min: 0, Max: math.Max(end, 1e-9), From: timeLeft, To: timeRight}
@@ -31,13 +32,13 @@ func overTime(b *book, t *bench.Traces, c *bench.ClipTrace, a, z *bench.Design) 
 	wave := panel(-1, 1, waveFoot, waveTop)
 	level := panel(levelMin, levelMax, levelFoot, levelTop)
 	frames := panel(low, top, framesFoot, framesTop)
-	wave.Grid(nil, []drawing.Tick{{At: 0, Label: "0"}}, "", "wave")
-	level.Grid(nil, drawing.Ticks(levelMin, levelMax, 3), "", "level, dBov")
+	wave.Grid(nil, nil, "", "wave")
+	level.Grid(nil, drawing.Ticks(levelMin, levelMax, 3), "", "dBov")
 	frames.Grid(nil, drawing.Ticks(low, top, 6), "time, s", "SNR, dB")
 	timeTicks(f, x)
 	peak := peak(c)
-	f.Words("tick", timeLeft-6, waveTop+8, drawing.End, peakLabel(peak), "data-part", "peak")
 	f.Area(drawing.Ink{Role: "soft"}, envelope(wave, c, peak), "data-part", "wave")
+	f.Words("tick", timeLeft+6, waveTop+6, drawing.Start, peakLabel(peak), "data-part", "peak")
 	f.Path(drawing.Ink{Role: "soft", Width: 1.2}, level.Points(steps(c), floats(c.LevelDBov)), "data-part", "level")
 	for i, d := range []*bench.Design{a, z} {
 		ink := pairInk(i)
@@ -46,7 +47,7 @@ func overTime(b *book, t *bench.Traces, c *bench.ClipTrace, a, z *bench.Design) 
 	}
 	f.Path(drawing.Ink{Role: "ink", Width: 1.4}, []drawing.Point{{X: timeLeft, Y: waveTop}, {X: timeLeft, Y: framesFoot}}, "data-part", "cursor")
 	f.Text = fmt.Sprintf("Waveform, level and SNR of %s over %s seconds, coded by %s (A) and %s (B).", c.File, trim(end), a.Spec, z.Spec)
-	return plate{Figure: f, Caption: "From above: waveform, level, and SNR of A (solid) and B (dashed); gaps where there is no signal or no error."}
+	return plate{Figure: f, Caption: "From above: waveform, level in dBov, and SNR of A (solid) and B (dashed); gaps where there is no signal or no error."}
 }
 
 // pairInk are the lines of A and B.
@@ -67,7 +68,7 @@ func timeTicks(f *drawing.Figure, x drawing.Scale) {
 }
 
 func peakLabel(peak float64) string {
-	return drawing.Minus(fixed(bench.Num(decibels(peak)), 0)) + " dB"
+	return "peak " + drawing.Minus(fixed(bench.Num(decibels(peak)), 0)) + " dB"
 }
 
 // steps are the middles of the steps in seconds.

@@ -44,20 +44,37 @@ func tracks(b *book, t *bench.Traces) []track {
 }
 
 func pack(b *book, c *bench.ClipTrace, points int) track {
-	n := len(c.Max)
-	merge := max(1, (n+points-1)/points)
-	out := track{File: c.File, Step: c.StepSeconds * float64(merge), Seconds: c.StepSeconds * float64(n), Peak: peak(c)}
+	out := track{File: c.File, Seconds: c.StepSeconds * float64(len(c.Max)), Peak: peak(c)}
+	c = thin(c, points)
+	out.Step = c.StepSeconds
 	for i := range b.Clips {
 		if b.Clips[i].File == c.File {
 			out.Name, out.Seconds = b.Clips[i].Name, b.Clips[i].Seconds
 		}
 	}
 	wave := func(v float64) float64 { return 128 + 127*v/out.Peak }
-	out.Min = bytesOf(reduce(c.Min, merge, least), wave)
-	out.Max = bytesOf(reduce(c.Max, merge, most), wave)
-	out.Level = bytesOf(reduce(c.LevelDBov, merge, power10), func(v float64) float64 { return 2 * (v + 100) })
+	out.Min = bytesOf(c.Min, wave)
+	out.Max = bytesOf(c.Max, wave)
+	out.Level = bytesOf(c.LevelDBov, func(v float64) float64 { return 2 * (v + 100) })
 	for _, d := range b.Designs {
-		out.SNR = append(out.SNR, bytesOf(reduce(c.SNR[d.Spec], merge, mean), func(v float64) float64 { return 2 * (v + 20) }))
+		out.SNR = append(out.SNR, bytesOf(c.SNR[d.Spec], func(v float64) float64 { return 2 * (v + 20) }))
+	}
+	return out
+}
+
+// thin merges steps until at most so many points are left: extremes of the
+// waveform, mean power of the level, mean of the SNR in dB.
+func thin(c *bench.ClipTrace, points int) *bench.ClipTrace {
+	merge := (len(c.Max) + points - 1) / points
+	if merge <= 1 {
+		return c
+	}
+	out := &bench.ClipTrace{
+		File: c.File, StepSeconds: c.StepSeconds * float64(merge), SNR: map[string][]bench.Num{},
+		Min: reduce(c.Min, merge, least), Max: reduce(c.Max, merge, most), LevelDBov: reduce(c.LevelDBov, merge, power10),
+	}
+	for spec, v := range c.SNR {
+		out.SNR[spec] = reduce(v, merge, mean)
 	}
 	return out
 }
@@ -75,7 +92,7 @@ func peak(c *bench.ClipTrace) float64 {
 }
 
 // reduce merges so many values at a time; undefined ones are passed over.
-func reduce(v []bench.Num, merge int, how func([]float64) float64) (out []float64) {
+func reduce(v []bench.Num, merge int, how func([]float64) float64) (out []bench.Num) {
 	for i := 0; i < len(v); i += merge {
 		var part []float64
 		for _, x := range v[i:min(i+merge, len(v))] {
@@ -84,10 +101,10 @@ func reduce(v []bench.Num, merge int, how func([]float64) float64) (out []float6
 			}
 		}
 		if len(part) == 0 {
-			out = append(out, nan)
+			out = append(out, bench.Num(nan))
 			continue
 		}
-		out = append(out, how(part))
+		out = append(out, bench.Num(how(part)))
 	}
 	return out
 }
@@ -125,12 +142,12 @@ func power10(v []float64) float64 {
 	return 10 * math.Log10(sum/float64(len(v)))
 }
 
-func bytesOf(v []float64, scale func(float64) float64) string {
+func bytesOf(v []bench.Num, scale func(float64) float64) string {
 	out := make([]byte, len(v))
 	for i, x := range v {
 		out[i] = undefined
-		if !math.IsNaN(x) {
-			out[i] = byte(math.Max(0, math.Min(254, math.Round(scale(x)))))
+		if x.Defined() {
+			out[i] = byte(math.Max(0, math.Min(254, math.Round(scale(float64(x))))))
 		}
 	}
 	return base64.StdEncoding.EncodeToString(out)

@@ -102,7 +102,7 @@
     part('level').setAttribute('d', line(now.level, x, b => up(level(b), g.level)));
     part('a').setAttribute('d', line(now.a, x, b => up(snr(b), g.frames)));
     part('b').setAttribute('d', line(now.b, x, b => up(snr(b), g.frames)));
-    part('peak').textContent = (Math.round(20 * Math.log10(now.t.peak)) || 0).toFixed(0).replace('-', '−') + ' dB';
+    part('peak').textContent = 'peak ' + (Math.round(20 * Math.log10(now.t.peak)) || 0).toFixed(0).replace('-', '−') + ' dB';
     ticks();
     const names = [pick.a, pick.b].map(s => s.selectedOptions[0].textContent);
     $('time-key').querySelectorAll('li').forEach((li, i) => { li.lastChild.textContent = ' ' + 'AB'[i] + ' ' + names[i]; });
