@@ -8,13 +8,25 @@ import (
 	"fewbits/codec/design"
 )
 
-// modelKey names the model a fitted design is made for; fromKey also takes the
-// recordings themselves; scaleKey says how a model is scaled to them.
+// fromKey names what a fitted design is made from: a model, a density table
+// or the recordings themselves. scaleKey says how a model is scaled to them.
 var (
-	modelKey = oneOf("from", "laplacian", "gaussian", "gamma")
-	fromKey  = oneOf("from", "laplacian", "gaussian", "gamma", "data")
+	fromKey = Key{
+		Name:    "from",
+		Accepts: "laplacian|gaussian|gamma|data or a density table FILE.csv (a line a value and its density)",
+		Default: "laplacian", Valid: validFrom,
+	}
 	scaleKey = oneOf("scale", "rms", "active")
 )
+
+// validFrom accepts the models, data and the name of a table.
+func validFrom(v string) bool {
+	switch v {
+	case "laplacian", "gaussian", "gamma", "data":
+		return true
+	}
+	return len(v) > 4 && strings.HasSuffix(strings.ToLower(v), ".csv")
+}
 
 var lloydMax = Family{
 	Name:    "lloyd-max",

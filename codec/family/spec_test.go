@@ -28,6 +28,8 @@ func TestParseAccepts(t *testing.T) {
 		{"lloyd-max:6,aim=entropy,rate=3.5", 6, 64, Level, "lloyd-max-6_aim-entropy_rate-3.5"},
 		{"lloyd-max:6,from=data,aim=entropy,lambda=1e-4", 6, 64, Data, "lloyd-max-6_from-data_aim-entropy_lambda-1e-4"},
 		{"compander:4,from=data,segments=8,power=0.5", 4, 16, Data, "compander-4_from-data_segments-8_power-0.5"},
+		{"compander:4", 4, 16, Level, "compander-4"},
+		{"lloyd-max:4,from=own.csv,symmetry=free", 4, 16, Level, "lloyd-max-4_from-own.csv_symmetry-free"},
 		{"lloyd-max:4,from=data", 4, 16, Data, "lloyd-max-4_from-data"},
 		{"lloyd-max:4,from=data,aim=segsnr", 4, 16, FramedData, "lloyd-max-4_from-data_aim-segsnr"},
 		{"uniform", 0, 0, Nothing, "uniform"},

@@ -3,6 +3,8 @@ package bench
 import (
 	"fmt"
 	"math"
+	"os"
+	"strings"
 
 	"fewbits/codec/design"
 	"fewbits/measure/model"
@@ -18,9 +20,26 @@ func (p *pool) density(from, scale string) (design.Density, string, error) {
 	if err != nil {
 		return nil, "", err
 	}
-	m, err := model.OfRMS(from, rms)
+	return densityOf(from, rms, how)
+}
+
+// densityOf is the model named from, or the density table of that file, at an
+// rms.
+func densityOf(from string, rms float64, how string) (design.Density, string, error) {
+	how = fmt.Sprintf("%s %s (%.1f dBov)", from, how, 20*math.Log10(rms))
+	if !strings.HasSuffix(strings.ToLower(from), ".csv") {
+		m, err := model.OfRMS(from, rms)
+		return m, how, err
+	}
+	f, err := os.Open(from)
 	if err != nil {
 		return nil, "", err
 	}
-	return m, fmt.Sprintf("%s %s (%.1f dBov)", from, how, 20*math.Log10(rms)), nil
+	defer f.Close()
+	table, err := model.ParseTable(f)
+	if err != nil {
+		return nil, "", fmt.Errorf("%s: %w", from, err)
+	}
+	table, err = table.Stretched(rms / table.RMS())
+	return table, how, err
 }
