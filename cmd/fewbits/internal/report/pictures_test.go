@@ -12,6 +12,9 @@ import (
 	"strings"
 	"testing"
 
+	"codeberg.org/go-fonts/liberation/liberationsansbold"
+	"codeberg.org/go-fonts/liberation/liberationsansregular"
+	"golang.org/x/image/font/sfnt"
 	"pgregory.net/rapid"
 
 	"fewbits/cmd/fewbits/internal/bench"
@@ -159,6 +162,31 @@ func TestGapsEqualResults(t *testing.T) {
 		want := b.pooled[m[1]].Behind
 		if m[2] != full(float64(want[0])) || m[3] != full(float64(want[1])) {
 			t.Errorf("%s: %s to %s, want %v", m[1], m[2], m[3], want)
+		}
+	}
+}
+
+// TestGlyphs: the fonts of the PNG files have every letter of the pictures.
+func TestGlyphs(t *testing.T) {
+	r, traces := synthetic(1, 20)
+	b := open(r)
+	var fonts []*sfnt.Font
+	for _, ttf := range [][]byte{liberationsansregular.TTF, liberationsansbold.TTF} {
+		f, err := sfnt.Parse(ttf)
+		if err != nil {
+			t.Fatal(err)
+		}
+		fonts = append(fonts, f)
+	}
+	for _, p := range append(draw(b, traces).all(), overTime(b, traces, &traces.Clips[0], &r.Designs[0], &r.Designs[1])) {
+		for _, words := range regexp.MustCompile(`<text[^>]*>([^<]*)<`).FindAllStringSubmatch(p.File(), -1) {
+			for _, letter := range words[1] {
+				for _, f := range fonts {
+					if i, err := f.GlyphIndex(nil, letter); err != nil || i == 0 {
+						t.Fatalf("%s: no %q in %q", p.Name, letter, words[1])
+					}
+				}
+			}
 		}
 	}
 }

@@ -3,6 +3,7 @@ package report
 import (
 	"fmt"
 	"math"
+	"strconv"
 	"strings"
 
 	"fewbits/cmd/fewbits/internal/bench"
@@ -108,17 +109,12 @@ func powers(s drawing.Scale) (out []drawing.Tick) {
 	return out
 }
 
-// power writes the whole power of ten next below 10^v.
+// power writes the whole power of ten next below 10^v, in letters that every
+// font has.
 func power(v float64) string {
-	digits := []rune("⁰¹²³⁴⁵⁶⁷⁸⁹")
-	var out strings.Builder
-	out.WriteString("10")
-	for _, c := range fmt.Sprint(int(math.Floor(v))) {
-		if c == '-' {
-			out.WriteString("⁻")
-		} else {
-			out.WriteString(string(digits[c-'0']))
-		}
+	k := int(math.Floor(v))
+	if k < -3 || k > 3 {
+		return fmt.Sprintf("1e%d", k)
 	}
-	return out.String()
+	return strconv.FormatFloat(math.Pow10(k), 'f', -1, 64)
 }
