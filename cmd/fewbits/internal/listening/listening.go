@@ -1,224 +1,127 @@
 // Package listening turns a run's reconstructions into blind material for
 // listening in a room: level-matched pairs under neutral names, an answer sheet
-// to print and a key kept apart; and it scores the answers.
+// to print, a table for the answers and a key kept apart; and it scores the
+// answers with the exact sign test (Dixon and Mood, "The Statistical Sign Test",
+// J. Am. Stat. Assoc. 41, 1946).
+//
+// Both sides of a pair play at 1/b, b = <x,y>/<x,x> over the frames in range: the
+// part of the reconstruction that is the recording then has the recording's own
+// level, and idle noise counts for nothing.
 package listening
 
 import (
-	"crypto/sha256"
-	"encoding/csv"
-	"encoding/hex"
 	"fmt"
-	"io"
 	"math"
-	"math/rand/v2"
-	"os"
-	"path/filepath"
-	"strconv"
+	"strings"
 
 	"fewbits/samples"
 )
 
-// gapSeconds of silence part the two sides of a pair.
-const gapSeconds = 0.5
+// The files beside the pairs.
+const (
+	SheetFile   = "answers.html" // to print and fill in by hand
+	AnswersFile = "answers.csv"  // to type the answers into
+	KeyFile     = "key.csv"      // which side is which design; written last
+)
 
-// Pair is one clip coded by two designs A and B. B1 and B2 are b = <x,y>/<x,x>
-// of A and B over the frames in range, above 0: each side is matched by 1/b.
+// Pair is one clip coded by two designs A and B.
 type Pair struct {
-	Clip         string
-	PathA, PathB string
-	B1, B2       float64
+	Clip         string  // as the run names it
+	PathA, PathB string  // reconstructions: same rate, channels and frames
+	B1, B2       float64 // b of A and of B, above 0 and finite
 }
 
-// Report says what was done to all files of a set.
+// Report says what was made and what was done to all files of the set.
 type Report struct {
-	// AttenuationDB is by how much all went down so that none clips; 0 or more.
-	AttenuationDB float64
-	Files         []string
+	AttenuationDB float64  // by how much all files went down so that none clips, 0 or more
+	LargestGainDB float64  // the largest gain that a side plays at, AttenuationDB taken off
+	Reference     string   // the loudest pair: the one to set the playback level on
+	Files         []string // the pairs' names in order
 }
 
-// Write makes pair-01.wav and so on, answers.html and key.csv in a folder that
-// is there. The order is balanced over the pairs and drawn from the seed.
+// Write makes pair-01.wav and so on, 24-bit: one side, half a second of silence,
+// the other; then the answer sheet, the table for answers and the key. dir is
+// there already. B goes first as often as A, up to one, in an order drawn from
+// the seed; same input, same bytes. Where a sample would pass full scale all
+// files go down by the same factor. Nothing is replaced: a file in the way
+// matches fs.ErrExist. Each file appears whole; on failure none stays.
+//
+// It panics without pairs and where both designs have one name.
 func Write(dir, nameA, nameB string, pairs []Pair, seed uint64) (Report, error) {
-	swapped := order(len(pairs), seed)
-	peak := 0.0
-	for _, p := range pairs {
-		for _, side := range []struct {
-			path string
-			b    float64
-		}{{p.PathA, p.B1}, {p.PathB, p.B2}} {
-			v, err := peakOf(side.path)
-			if err != nil {
-				return Report{}, err
-			}
-			peak = math.Max(peak, v/side.b)
-		}
+	if len(pairs) == 0 || nameA == nameB {
+		panic(fmt.Sprintf("listening: %d pairs of %q and %q", len(pairs), nameA, nameB))
 	}
-	gain := 1.0
-	if peak > mostPeak {
-		gain = mostPeak / peak
+	set, err := arrange(nameA, nameB, pairs, seed)
+	if err != nil {
+		return Report{}, err
 	}
-	rep := Report{AttenuationDB: -20 * math.Log10(gain)}
-	if gain == 1 {
-		rep.AttenuationDB = 0
+	m := material{dir: dir}
+	if err := m.write(set, seed); err != nil {
+		m.remove()
+		return Report{}, err
 	}
-	key := [][]string{{"pair", "clip", "first", "second", "gain_first_db", "gain_second_db", "seed", "sha256"}}
-	for i, p := range pairs {
-		name := fmt.Sprintf("pair-%02d.wav", i+1)
-		first, second := side{p.PathA, nameA, gain / p.B1}, side{p.PathB, nameB, gain / p.B2}
-		if swapped[i] {
-			first, second = second, first
-		}
-		path := filepath.Join(dir, name)
-		if err := writePair(path, first, second); err != nil {
-			return rep, err
-		}
-		sum, err := digest(path)
-		if err != nil {
-			return rep, err
-		}
-		rep.Files = append(rep.Files, name)
-		key = append(key, []string{
-			strconv.Itoa(i + 1), p.Clip, first.name, second.name, decibels(first.gain), decibels(second.gain),
-			strconv.FormatUint(seed, 10), sum,
-		})
-	}
-	if err := samples.WriteFile(filepath.Join(dir, "answers.html"), func(w io.Writer) error { return sheet(w, len(pairs)) }); err != nil {
-		return rep, err
-	}
-	return rep, samples.WriteFile(filepath.Join(dir, "key.csv"), func(w io.Writer) error { return csv.NewWriter(w).WriteAll(key) })
+	return set.report, nil
 }
 
-// mostPeak leaves a step of the 24-bit grid below full scale.
-const mostPeak = 1 - 1.0/(1<<20)
+// set is the material before it is written.
+type set struct {
+	items  []item
+	report Report
+}
+
+// item is one pair in playing order.
+type item struct {
+	file, clip    string
+	order         string // "AB" or "BA"
+	first, second side
+	info          samples.Info // of either side
+}
 
 // side is one half of a pair.
 type side struct {
-	path, name string
-	gain       float64
+	path, design string
+	gain         float64
 }
 
-func decibels(gain float64) string { return strconv.FormatFloat(20*math.Log10(gain), 'f', 4, 64) }
-
-// order says for each pair whether B comes first: as often as not, up to one.
-func order(n int, seed uint64) []bool {
-	r := rand.New(rand.NewPCG(seed, 0x6c697374656e))
-	out := make([]bool, n)
-	odd := n%2 == 1 && r.IntN(2) == 1
-	for i := range n / 2 {
-		out[i] = true
-	}
-	if odd {
-		out[n/2] = true
-	}
-	r.Shuffle(n, func(i, j int) { out[i], out[j] = out[j], out[i] })
-	return out
-}
-
-// blockFrames is how much is read at a time.
-const blockFrames = 1 << 16
-
-// blocks walks a recording.
-func blocks(path string, f func(planes [][]float64, start int64) error) (samples.Info, error) {
-	r, err := samples.Open(path)
-	if err != nil {
-		return samples.Info{}, fmt.Errorf("%w; the run must have written audio (no --no-audio)", err)
-	}
-	defer r.Close()
-	info := r.Info()
-	for at := int64(0); at < info.Frames; at += blockFrames {
-		planes := make([][]float64, info.Channels)
-		for c := range planes {
-			planes[c] = make([]float64, min(blockFrames, info.Frames-at))
-		}
-		if err := r.Read(planes, at); err != nil {
-			return info, err
-		}
-		if err := f(planes, at); err != nil {
-			return info, err
+// arrange draws the order and finds the gains.
+func arrange(nameA, nameB string, pairs []Pair, seed uint64) (set, error) {
+	var s set
+	sides := make([]soundOf, len(pairs))
+	for i, p := range pairs {
+		var err error
+		if sides[i], err = examine(p); err != nil {
+			return s, err
 		}
 	}
-	return info, nil
-}
-
-func peakOf(path string) (peak float64, err error) {
-	_, err = blocks(path, func(planes [][]float64, _ int64) error {
-		for _, p := range planes {
-			for _, x := range p {
-				peak = math.Max(peak, math.Abs(x))
-			}
+	common := commonGain(sides)
+	s.report = Report{LargestGainDB: math.Inf(-1)}
+	if common < 1 {
+		s.report.AttenuationDB = -decibels(common)
+	}
+	loudest := math.Inf(-1)
+	swapped := order(len(pairs), seed)
+	for i, p := range pairs {
+		a, b := side{p.PathA, nameA, common / p.B1}, side{p.PathB, nameB, common / p.B2}
+		it := item{file: fileName(i, len(pairs)), clip: p.Clip, order: "AB", first: a, second: b, info: sides[i].info}
+		if swapped[i] {
+			it.order, it.first, it.second = "BA", b, a
 		}
-		return nil
-	})
-	return peak, err
-}
-
-// writePair writes one file: first, silence, second, 24 bits.
-func writePair(path string, first, second side) error {
-	a, err := infoOf(first.path)
-	if err != nil {
-		return err
-	}
-	b, err := infoOf(second.path)
-	if err != nil {
-		return err
-	}
-	if a.Rate != b.Rate || a.Channels != b.Channels {
-		return fmt.Errorf("%s and %s differ in rate or channels: they are not from one run", first.path, second.path)
-	}
-	gap := int64(math.Round(gapSeconds * float64(a.Rate)))
-	w, err := samples.Create(path, a.Rate, a.Channels, a.Frames+gap+b.Frames, samples.Depth24)
-	if err != nil {
-		return err
-	}
-	defer w.Abort()
-	if err := put(w, first, 0); err != nil {
-		return err
-	}
-	silence := make([][]float64, a.Channels)
-	for c := range silence {
-		silence[c] = make([]float64, gap)
-	}
-	if _, err := w.WriteAt(silence, a.Frames); err != nil {
-		return err
-	}
-	if err := put(w, second, a.Frames+gap); err != nil {
-		return err
-	}
-	return w.Commit()
-}
-
-func infoOf(path string) (samples.Info, error) {
-	r, err := samples.Open(path)
-	if err != nil {
-		return samples.Info{}, fmt.Errorf("%w; the run must have written audio (no --no-audio)", err)
-	}
-	defer r.Close()
-	return r.Info(), nil
-}
-
-// put copies one side to its place, with its gain.
-func put(w *samples.Writer, s side, at int64) error {
-	_, err := blocks(s.path, func(planes [][]float64, start int64) error {
-		for _, p := range planes {
-			for i := range p {
-				p[i] *= s.gain
-			}
+		s.items = append(s.items, it)
+		s.report.Files = append(s.report.Files, it.file)
+		s.report.LargestGainDB = max(s.report.LargestGainDB, decibels(a.gain), decibels(b.gain))
+		if sides[i].power > loudest {
+			loudest, s.report.Reference = sides[i].power, it.file
 		}
-		_, err := w.WriteAt(planes, at+start)
-		return err
-	})
-	return err
+	}
+	return s, nil
 }
 
-func digest(path string) (string, error) {
-	f, err := os.Open(path)
-	if err != nil {
-		return "", err
-	}
-	defer f.Close()
-	h := sha256.New()
-	if _, err := io.Copy(h, f); err != nil {
-		return "", err
-	}
-	return hex.EncodeToString(h.Sum(nil)), nil
+// fileName gives names that sort as they are numbered.
+func fileName(i, n int) string {
+	return fmt.Sprintf("pair-%0*d.wav", max(2, len(fmt.Sprint(n))), i+1)
 }
+
+func decibels(gain float64) float64 { return 20 * math.Log10(gain) }
+
+// stem is a pair's name without its ending, as sheets and tables show it.
+func stem(file string) string { return strings.TrimSuffix(file, ".wav") }
