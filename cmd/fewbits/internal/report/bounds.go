@@ -26,7 +26,7 @@ func drawBounds(p drawing.Panel, bounds []bench.Bound) {
 		p.Curve(drawing.Ink{Role: "axis", Width: 1.3, Dash: []float64{1.5, 2.5}}, xs, ys)
 		names = append(names, bound.Model)
 	}
-	p.F.Words("tick", p.X.From+10, p.Y.To+14, drawing.Start, "grey dots: Shannon's bound, from above "+listed(names))
+	p.F.Words("tick", p.X.To-8, p.Y.From-10, drawing.End, "grey dots: Shannon's bound of the models, from above "+listed(names))
 }
 
 // height is a bound's SNR at its first number of bits.

@@ -12,10 +12,10 @@ import (
 // The places of the three panels over time; the page's script redraws in them.
 const (
 	timeLeft, timeRight   = 56, width - 14
-	waveTop, waveFoot     = 10, 72
-	levelTop, levelFoot   = 88, 158
-	framesTop, framesFoot = 174, 318
-	timeHeight            = 362
+	waveTop, waveFoot     = 18, 80
+	levelTop, levelFoot   = 96, 166
+	framesTop, framesFoot = 182, 326
+	timeHeight            = 370
 	levelMin, levelMax    = -90, 0
 )
 
@@ -38,7 +38,7 @@ func overTime(b *book, t *bench.Traces, c *bench.ClipTrace, a, z *bench.Design) 
 	timeTicks(f, x)
 	peak := peak(c)
 	f.Area(drawing.Ink{Role: "soft"}, envelope(wave, c, peak), "data-part", "wave")
-	f.Words("tick", timeLeft+6, waveTop+6, drawing.Start, peakLabel(peak), "data-part", "peak")
+	f.Words("tick", timeLeft, waveTop-5, drawing.Start, peakLabel(peak), "data-part", "peak")
 	f.Path(drawing.Ink{Role: "soft", Width: 1.2}, level.Points(steps(c), floats(c.LevelDBov)), "data-part", "level")
 	for i, d := range []*bench.Design{a, z} {
 		ink := pairInk(i)
