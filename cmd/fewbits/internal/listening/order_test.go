@@ -2,6 +2,7 @@ package listening
 
 import (
 	"slices"
+	"strings"
 	"testing"
 )
 
@@ -45,11 +46,11 @@ func TestOrderIsFair(t *testing.T) {
 
 // TestOrderStays pins the draw: a set made anew years later must fit its sheets.
 func TestOrderStays(t *testing.T) {
-	text := ""
+	var text strings.Builder
 	for _, s := range order(16, 7) {
-		text += map[bool]string{false: "A", true: "B"}[s]
+		text.WriteString(map[bool]string{false: "A", true: "B"}[s])
 	}
-	if want := "BBAAABBBAAABBBAA"; text != want {
-		t.Errorf("seed 7 draws %s, once it drew %s", text, want)
+	if want := "BBAAABBBAAABBBAA"; text.String() != want {
+		t.Errorf("seed 7 draws %s, once it drew %s", text.String(), want)
 	}
 }
