@@ -18,12 +18,12 @@ const sheetHead = `<!doctype html>
 body{font:11pt/1.4 Georgia,serif;max-width:17cm;margin:1cm auto;padding:0 .5cm;color:#111;background:#fff}
 h1{font-size:16pt;margin:0 0 .3cm} h2{font-size:12pt;margin:.4cm 0 .1cm} p{margin:.1cm 0 .25cm}
 .level{border-left:.12cm solid #111;padding-left:.35cm}
-.who span{display:inline-block;border-bottom:1px solid #111;min-width:3.2cm;margin:0 .3cm .25cm .1cm}
+.who{line-height:2} .who span{display:inline-block;border-bottom:1px solid #111;min-width:3.2cm;height:1em;margin:0 .3cm 0 .1cm;vertical-align:-.1cm}
 table{border-collapse:collapse;width:100%%} th,td{border:1px solid #666;padding:.2cm;text-align:left}
 thead{display:table-header-group} tr{break-inside:avoid} td:last-child{width:32%%}
 i{display:inline-block;width:.42cm;height:.42cm;border:1px solid #111}
 @page{size:A4;margin:1.5cm}
-@media print{body{margin:0;padding:0;max-width:none}}
+@media print{body{margin:0;padding:0 .05cm;max-width:none}}
 </style></head><body>
 <h1>Which of the two do you prefer?</h1>
 <p>Each file holds one message twice, with half a second of silence between. Play a
