@@ -32,7 +32,7 @@ func (m Gaussian) LogPDF(x float64) float64 {
 // CDF is the distribution function.
 func (m Gaussian) CDF(x float64) float64 { return math.Erfc(-x/m.Scale/math.Sqrt2) / 2 }
 
-// Quantile inverts CDF, 0 < p < 1; math.Erfcinv loses the tails' digits.
+// Quantile inverts CDF, 0 < p < 1.
 func (m Gaussian) Quantile(p float64) float64 {
 	return m.Scale * math.Sqrt2 * mirrorQuantile(0.5, 0.5, p)
 }

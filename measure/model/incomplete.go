@@ -14,6 +14,8 @@ func mirrorCDF(s, y, x float64) float64 {
 		return 0
 	case math.IsInf(y, 1):
 		return 1
+	case s == 0.5:
+		return math.Erfc(math.Copysign(math.Sqrt(y), -x)) / 2
 	case x < 0:
 		return mathext.GammaIncRegComp(s, y) / 2
 	}
@@ -48,6 +50,10 @@ func quantileEdge(p float64) float64 {
 // invertGamma solves Q(s, y) = q, 0 < q < 1, by Newton's method on ln Q over
 // ln y, kept within a bracket.
 func invertGamma(s, q float64) float64 {
+	if s == 0.5 {
+		u := invertErfc(q)
+		return u * u
+	}
 	lo, hi := math.Inf(-1), math.Log(s+40+10*math.Sqrt(s)-2*math.Log(q))
 	z := math.Min(hi, (math.Log1p(-q)+lgamma(s+1))/s) // P(s, y) is about y^s/Gamma(s+1)
 	for range 200 {
@@ -86,6 +92,20 @@ func digamma(x float64) float64 {
 	q := 1 / (x * x)
 	series := q * (1./12 - q*(1./120-q*(1./252-q*(1./240-q*(1./132-q*(691./32760-q/12))))))
 	return sum + math.Log(x) - 0.5/x - series
+}
+
+// invertErfc solves erfc(u) = q, 0 < q < 1: the library's inverse keeps 5 digits
+// in the tails, Newton steps the rest.
+func invertErfc(q float64) float64 {
+	u := math.Erfcinv(q)
+	for range 3 {
+		gap := math.Erfc(u) - q
+		if q > 0.5 {
+			gap = (1 - q) - math.Erf(u)
+		}
+		u += gap * math.Sqrt(math.Pi) / 2 * math.Exp(u*u)
+	}
+	return u
 }
 
 // gammaGap is Q(s, y) - q, taken on the side that keeps digits, and whether y

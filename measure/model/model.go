@@ -54,7 +54,7 @@ func FitNames() []string { return append(Names(), "free-gamma", "generalized-gau
 // double precision.
 const (
 	minGammaShape, maxGammaShape             = 1e-6, 100.0
-	minGeneralizedShape, maxGeneralizedShape = 0.02, 100.0
+	minGeneralizedShape, maxGeneralizedShape = 0.1, 100.0
 )
 
 // New returns the model of that name with the given shape and scale, in the
