@@ -13,16 +13,16 @@ import (
 var (
 	fromKey = Key{
 		Name:    "from",
-		Accepts: "laplacian|gaussian|gamma|data or a density table FILE.csv (a line a value and its density)",
+		Accepts: "laplacian|gaussian|gamma|generalized-gaussian|free-gamma|best|data or a density table FILE.csv (a line a value and its density)",
 		Default: "laplacian", Valid: validFrom,
 	}
-	scaleKey = oneOf("scale", "rms", "active")
+	scaleKey = oneOf("scale", "rms", "active", "fit")
 )
 
 // validFrom accepts the models, data and the name of a table.
 func validFrom(v string) bool {
 	switch v {
-	case "laplacian", "gaussian", "gamma", "data":
+	case "laplacian", "gaussian", "gamma", "generalized-gaussian", "free-gamma", "best", "data":
 		return true
 	}
 	return len(v) > 4 && strings.HasSuffix(strings.ToLower(v), ".csv")

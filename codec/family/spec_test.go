@@ -86,7 +86,7 @@ func TestParseRefuses(t *testing.T) {
 		{"uniform:8,overload=NaNrms", `"NaNrms"`, "full, optimal"},
 		{"uniform:8,from=gamma", `"gamma"`, "overload=optimal"},
 		{"lloyd-max:8,from=cauchy", `"cauchy"`, "laplacian"},
-		{"lloyd-max:8,scale=peak", `"peak"`, "rms|active"},
+		{"lloyd-max:8,scale=peak", `"peak"`, "rms|active|fit"},
 		{"lloyd-max:8,symmetry=odd", `"odd"`, "mirror|free"},
 		{"lloyd-max:8,aim=entropy", "aim=entropy", "rate= or lambda="},
 		{"lloyd-max:8,aim=entropy,rate=3,lambda=1", "aim=entropy", "one of them"},

@@ -4,6 +4,7 @@ import (
 	"fmt"
 	"math"
 	"os"
+	"slices"
 	"strings"
 
 	"fewbits/codec/design"
@@ -16,11 +17,24 @@ var _ design.Density = model.Model(nil)
 // density is a family.Material's Density: the model named from, scaled to the
 // pooled recordings.
 func (p *pool) density(from, scale string) (design.Density, string, error) {
-	rms, how, err := p.rms(scale)
+	if scale != "fit" && slices.Contains(model.Names(), from) || strings.HasSuffix(strings.ToLower(from), ".csv") {
+		rms, how, err := p.rms(scale)
+		if err != nil {
+			return nil, "", err
+		}
+		return densityOf(from, rms, how)
+	}
+	m, how, err := p.fit(from)
+	if err != nil || scale == "fit" {
+		return m, how, err
+	}
+	rms, scaled, err := p.rms(scale)
 	if err != nil {
 		return nil, "", err
 	}
-	return densityOf(from, rms, how)
+	shape, _ := m.Parameters()
+	m, err = model.OfShape(m.Name(), shape, rms)
+	return m, fmt.Sprintf("%s, %s (%.1f dBov)", how, scaled, 20*math.Log10(rms)), err
 }
 
 // densityOf is the model named from, or the density table of that file, at an

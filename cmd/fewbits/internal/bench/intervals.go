@@ -50,7 +50,8 @@ func byBits(designs []Design) [][]int {
 	return out
 }
 
-// clipUnits takes each clip's figure as one observation, or each talker's.
+// clipUnits takes each clip's figure as one observation, or each talker's,
+// weighted by its frames, so that the leader is the winner of the table.
 func clipUnits(r *Results, members []int) (u measure.Units) {
 	for _, i := range members {
 		var row []float64
@@ -58,6 +59,9 @@ func clipUnits(r *Results, members []int) (u measure.Units) {
 			row = append(row, float64(r.Results[c*len(r.Designs)+i].Figures[r.Leading]))
 		}
 		u.Values = append(u.Values, row)
+	}
+	for _, c := range r.Clips {
+		u.Weights = append(u.Weights, float64(c.FramesInRange))
 	}
 	if slices.ContainsFunc(r.Clips, func(c Clip) bool { return c.Talker != "" }) {
 		for _, c := range r.Clips {
@@ -107,6 +111,9 @@ func (e *engine) traces(r *Results, surveys []*survey, outcomes []*outcome, desi
 	}
 	t.Spread = sum.rows(r.Designs, r.Pooled)
 	t.Edges, t.Negative, t.Positive = logHistogram(all.Counts())
+	if p := newPool(surveys); p.energy > 0 {
+		t.curvesOf(fitModels(&p.in, p.lsb, "in-range"))
+	}
 	return t, e.curves(t, designs, &all)
 }
 

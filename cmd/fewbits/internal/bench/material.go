@@ -12,6 +12,7 @@ import (
 
 // pool is what several recordings amount to as material for designs.
 type pool struct {
+	fits     []fitted // to the samples in range, once asked for
 	surveys  []*survey
 	hist     measure.Histogram
 	in       measure.Histogram
@@ -52,10 +53,7 @@ func (p *pool) material() (family.Material, error) {
 		m.ActiveRMS = math.Sqrt(p.activeSq / p.active)
 	}
 	values, counts := p.hist.Sparse()
-	m.Histogram = design.Histogram{Values: values, Weights: make([]float64, len(counts))}
-	for i, n := range counts {
-		m.Histogram.Weights[i] = float64(n)
-	}
+	m.Histogram = histogramOf(values, counts)
 	return m, nil
 }
 

@@ -80,6 +80,7 @@ func (e *engine) openOne(file string) (s *survey, err error) {
 		}
 		rec = s.rec
 	}
+	e.fitClip(s)
 	s.clip.SHA256 = sum
 	s.clip.Preparation = append(s.clip.Preparation, did...)
 	if e.plan.Talker != nil {

@@ -76,6 +76,9 @@ func MakeStaircases(ctx context.Context, plan Plan, judge string, rms float64) (
 func materialFor(ctx context.Context, plan Plan, rms float64) (family.Material, []float64, string, []Refusal, error) {
 	if len(plan.Inputs) == 0 {
 		m := family.Material{RMS: rms, ActiveRMS: rms, Density: func(from, scale string) (design.Density, string, error) {
+			if scale == "fit" || from == "best" || from == "generalized-gaussian" || from == "free-gamma" {
+				return nil, "", errors.New("a fitted model needs recordings: name some with --like")
+			}
 			return densityOf(from, rms, "at the level asked for")
 		}, Frames: func() (*design.Frames, error) { return nil, errors.New("frames need --like RECORDING") }}
 		return m, nil, "no recordings", nil, nil
