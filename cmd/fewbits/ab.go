@@ -124,7 +124,8 @@ func makePairs(c *cobra.Command, dir string, r *bench.Results, a, b bench.Design
 	if rep.AttenuationDB > 0 {
 		fmt.Fprintf(w, "all files were taken down by %.2f dB so that none clips\n", rep.AttenuationDB)
 	}
-	fmt.Fprintln(w, "set the playback level once, starting low, and keep it for all pairs")
+	fmt.Fprintf(w, "set the playback level once, on %s, starting low, and keep it for all pairs\n", rep.Reference)
+	fmt.Fprintln(w, "answers go to a CSV a listener (pair,preferred), then: fewbits score KEY.csv ANSWERS.csv...")
 	return nil
 }
 

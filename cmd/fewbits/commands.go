@@ -14,5 +14,6 @@ func commands() []*cobra.Command {
 		exportCommand(),
 		reportCommand(),
 		abCommand(),
+		scoreCommand(),
 	}
 }
