@@ -14,6 +14,7 @@ type law struct {
 	g     func(p float64) float64
 	edges []float64 // ascending
 	sum   []float64 // integral left of each edge
+	left  int       // panels that may still be halved
 }
 
 // gl is a Gauss-Legendre rule on [0, 1].
@@ -30,9 +31,10 @@ func newGL(n int) gl {
 // newLaw integrates g over the support: between the knots of d, in octaves
 // outwards where the support has no end, halving panels until rules of 4 and 8
 // nodes agree to 1e-10 of the whole (the finer one is then far better) and no
-// panel holds more than 1/32 of it. With half it starts at 0.
+// panel holds more than 1/32 of it; at most 16384 times. With half it starts at
+// 0.
 func newLaw(d Density, half bool, g func(p float64) float64) *law {
-	l := &law{d: d, g: g}
+	l := &law{d: d, g: g, left: 1 << 14}
 	cuts := l.octaves(half)
 	var scale float64
 	for i := range cuts[1:] {
@@ -53,7 +55,8 @@ func (l *law) refine(a, b, scale float64, depth int) {
 	s := l.panel(fine, a, b)
 	mid := split(a, b)
 	rough := math.Abs(s-l.panel(coarse, a, b)) > 1e-10*scale || math.Abs(s) > scale/32
-	if rough && depth > 0 && mid > a && mid < b {
+	if rough && l.left > 0 && depth > 0 && mid > a && mid < b {
+		l.left--
 		l.refine(a, mid, scale, depth-1)
 		l.refine(mid, b, scale, depth-1)
 		return

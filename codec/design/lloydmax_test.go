@@ -189,11 +189,32 @@ func TestLloydMaxProperties(t *testing.T) {
 				t.Fatalf("random staircase %d: %v has %g, below %g", i, values, mse, s.MSE)
 			}
 		}
+		mirrored, err := model.NewTabulated(negated(x), reversed(f))
+		if err != nil {
+			t.Fatal(err)
+		}
+		if r, err := design.LloydMax(mirrored, n, design.Free); err != nil || s.Proof == design.Unique && !near(r.MSE, s.MSE, 1e-9) {
+			t.Fatalf("mirrored: %g, want %g: %v", r.MSE, s.MSE, err)
+		}
 		scaled, _ := m.Stretched(0.003)
 		if r, err := design.LloydMax(scaled, n, design.Free); err != nil || !near(r.MSE, s.MSE*0.003*0.003, 1e-9) {
 			t.Fatalf("scaled: %g, want %g: %v", r.MSE, s.MSE*9e-6, err)
 		}
 	})
+}
+
+func reversed(x []float64) []float64 {
+	out := slices.Clone(x)
+	slices.Reverse(out)
+	return out
+}
+
+func negated(x []float64) []float64 {
+	out := reversed(x)
+	for i := range out {
+		out[i] = -out[i]
+	}
+	return out
 }
 
 func mids(y []float64) (t []float64) {

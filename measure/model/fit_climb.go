@@ -44,11 +44,23 @@ func (c candidate) climb(b *bins) (top summit, why string) {
 			continue
 		}
 		at, here, damp = next, c.look(f, next), damp/10
+		if c.outside(at, here) {
+			break
+		}
 		if damp < 1e-3 {
 			damp = 0
 		}
 	}
 	return summit{at, here.value, here.curve}, c.unsettled(b, at, here)
+}
+
+// outside reports that the shape is at a bound and the likelihood rises beyond.
+func (c candidate) outside(at place, here local) bool {
+	pushed := place{at[0] + math.Copysign(1, here.grad[0])}
+	if c.bound(&pushed); c.parameters != 2 {
+		return false
+	}
+	return pushed[0] == at[0]
 }
 
 // bound keeps the shape where densities can be computed.
@@ -64,7 +76,7 @@ func (c candidate) unsettled(b *bins, at place, here local) string {
 	slope := math.Max(math.Abs(here.grad[0]), math.Abs(here.grad[1]))
 	switch {
 	case !(slope < 1e-6) && c.parameters == 2 && b.zeros > 0.05 && shape < 1:
-		return fmt.Sprintf("%.0f %% of the samples are exact zeros, more than any shape down to %.3g suits: leave digital silence out", 100*b.zeros, shape)
+		return fmt.Sprintf("%.0f %% of the samples are exact zeros, more than any shape down to %g suits: leave digital silence out", 100*b.zeros, c.least)
 	case !(slope < 1e-6) && c.parameters == 2:
 		return fmt.Sprintf("the likelihood still rises at shape %.3g: no finite shape suits these data", shape)
 	case !(slope < 1e-6):

@@ -135,7 +135,7 @@ func (m *Tabulated) LogConcave() bool {
 		var first, next float64 // slopes of ln p at the piece's ends
 		switch {
 		case p > 0 && q > 0:
-			first = math.Log(q/p) / h
+			first = lnRatio(q, p) / h
 			next = first
 		case p > 0:
 			first, next = -1/h, math.Inf(-1)
@@ -168,14 +168,17 @@ func (m *Tabulated) PDF(x float64) float64 {
 	i := m.find(x)
 	p, q := m.f[i], m.f[i+1]
 	t := (x - m.x[i]) / (m.x[i+1] - m.x[i])
-	if p > 0 && q > 0 {
-		return p * math.Exp(t*math.Log(q/p))
+	switch { // from the higher end, so that nothing overflows
+	case p >= q && q > 0:
+		return p * math.Exp(t*lnRatio(q, p))
+	case p > 0 && q > 0:
+		return q * math.Exp((m.x[i+1]-x)/(m.x[i+1]-m.x[i])*lnRatio(p, q))
 	}
 	return p + t*(q-p)
 }
 
 // LogPDF is its natural logarithm.
-func (m *Tabulated) LogPDF(x float64) float64 { return math.Log(m.PDF(x)) }
+func (m *Tabulated) LogPDF(x float64) float64 { return ln(m.PDF(x)) }
 
 // CDF is the distribution function.
 func (m *Tabulated) CDF(x float64) float64 {
@@ -201,7 +204,7 @@ func (m *Tabulated) Quantile(p float64) float64 {
 	var u float64
 	switch {
 	case a > 0 && b > 0:
-		w := math.Log(a / b) // f = a exp(-w u)
+		w := lnRatio(a, b) // f = a exp(-w u)
 		u = rest / (a * h)
 		if w != 0 {
 			u = -math.Log1p(-rest*w/(a*h)) / w

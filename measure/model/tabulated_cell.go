@@ -52,7 +52,7 @@ func (m *Tabulated) piece(i int, a, b float64) moments {
 // fall to q after h; behind is what is left of the piece. The integral counts
 // from the higher end, so that nothing overflows.
 func exponential(p, q, h, before, behind, w float64) moments {
-	r := math.Log(p/q) / h
+	r := lnRatio(p, q) / h
 	if r >= 0 {
 		area, centroid, variance := fallCell(r * w)
 		mass := p * math.Exp(-r*before) * area * w
@@ -82,7 +82,7 @@ func (m *Tabulated) Entropy() float64 {
 		p, q, h := m.f[i], m.f[i+1], m.x[i+1]-m.x[i]
 		switch {
 		case p > 0 && q > 0: // ln f is straight: its mean is that at the centroid
-			nats -= c.p * (math.Log(p) + c.off/h*math.Log(q/p))
+			nats -= c.p * (ln(p) + c.off/h*lnRatio(q, p))
 		case p+q > 0: // of u ln u over a triangle of height p+q
 			nats -= h * (p + q) * (math.Log(p+q)/2 - 0.25)
 		}
@@ -97,7 +97,7 @@ func (m *Tabulated) slices(f func(x, weight float64)) {
 	for i := range m.x[1:] {
 		n := 1.0
 		if p, q := m.f[i], m.f[i+1]; p > 0 && q > 0 {
-			n = math.Max(1, math.Min(1000, math.Ceil(math.Abs(math.Log(p/q))/4)))
+			n = math.Max(1, math.Min(1000, math.Ceil(math.Abs(lnRatio(p, q))/4)))
 		}
 		h := (m.x[i+1] - m.x[i]) / n
 		for k := range int(n) {
@@ -107,4 +107,22 @@ func (m *Tabulated) slices(f func(x, weight float64)) {
 			}
 		}
 	}
+}
+
+// ln is the natural logarithm, of subnormal numbers too: math.Log is off by up
+// to 36 there on amd64 (Go 1.26).
+func ln(x float64) float64 {
+	if x >= 0x1p-1022 {
+		return math.Log(x)
+	}
+	f, e := math.Frexp(x)
+	return math.Log(f) + float64(e)*math.Ln2
+}
+
+// lnRatio is ln(p/q), p and q above 0.
+func lnRatio(p, q float64) float64 {
+	if r := p / q; r >= 0x1p-1022 && r <= math.MaxFloat64 {
+		return math.Log(r)
+	}
+	return ln(p) - ln(q)
 }

@@ -125,3 +125,28 @@ func FuzzParseTable(f *testing.F) {
 		}
 	})
 }
+
+// TestSteepTable: a piece that falls by 308 decades has the scale 1/ln of that,
+// and its mirror image has the same moments.
+func TestSteepTable(t *testing.T) {
+	for _, tiny := range []float64{1e-300, 1e-308, 1e-310} {
+		for _, f := range [][]float64{{1, tiny}, {tiny, 1}} {
+			m, err := model.NewTabulated([]float64{0, 1}, f)
+			if err != nil {
+				t.Fatal(err)
+			}
+			_, off, about := m.Cell(0, 1)
+			if mid := m.PDF(0.5); !(mid > 0 && mid < 1) {
+				t.Errorf("%v: density %g in the middle", f, mid)
+			}
+			if f[0] < 1 {
+				off = 1 - off
+			}
+			f, e := math.Frexp(tiny)
+			scale := -1 / (math.Log(f) + float64(e)*math.Ln2)
+			if !near(off, scale, 1e-12) || !near(about, scale*scale, 1e-12) {
+				t.Errorf("%g: centroid %.15g, variance %.15g; want scale %.15g", tiny, off, about, scale)
+			}
+		}
+	}
+}
