@@ -22,18 +22,21 @@ func designCommand() *cobra.Command {
 	var bits string
 	var level float64
 	var like []string
+	var trace bool
 	c := &cobra.Command{
 		Use:   "design SPEC...",
 		Short: "make designs and show their thresholds, values and error",
 		Long:  designHelp(),
 		Example: `  fewbits design lloyd-max:3,from=gaussian --level 0
   fewbits design mu-law:4 uniform:4,overload=optimal --format csv
-  fewbits design lloyd-max:6,from=data --like recordings/`,
+  fewbits design lloyd-max:6,from=data --like recordings/
+  fewbits design lloyd-max:8,from=gamma --trace`,
 		Args: atLeast(1),
 	}
 	c.Flags().StringVar(&bits, "bits", "4,6,8", "bits of designs that name none")
 	c.Flags().Float64Var(&level, "level", -20, "level of the model in `dBov`; 0 is an rms of 1")
 	c.Flags().StringArrayVar(&like, "like", nil, "make fitted designs on these recordings; repeatable")
+	c.Flags().BoolVar(&trace, "trace", false, "show how each designer converged")
 	judge := choose(c, "model", "model that designs without one are judged by", model.Names()...)
 	format := choose(c, "format", "how to print", "table", "csv", "json")
 	c.RunE = func(c *cobra.Command, args []string) error {
@@ -41,6 +44,7 @@ func designCommand() *cobra.Command {
 		if err != nil {
 			return err
 		}
+		plan.Trace = trace
 		got, refused, err := bench.MakeStaircases(c.Context(), plan, judge.value, math.Pow(10, level/20))
 		if err != nil {
 			return err
@@ -108,11 +112,14 @@ func printStaircases(w io.Writer, list []bench.Staircase, format string) error {
 // printStaircase prints one design's figures, then its cells.
 func printStaircase(w io.Writer, s bench.Staircase) {
 	fmt.Fprintf(w, "%s: %d levels, %d bits, made on: %s\n", s.Spec, s.Levels, s.Bits, s.MadeOn)
-	fmt.Fprintf(w, "  for %s: mse %.6g, SNR %s dB, entropy %s bits, overload %.3g of the samples\n",
-		s.Model, float64(s.MSE), num(s.SNRDB, 3), num(s.EntropyBits, 4), float64(s.OverloadP))
+	fmt.Fprintf(w, "  for %s: mse %.6g, SNR %s dB, entropy %s bits\n",
+		s.Model, float64(s.MSE), num(s.SNRDB, 3), num(s.EntropyBits, 4))
 	if s.BoundGapDB.Defined() {
-		fmt.Fprintf(w, "  %s dB short of Shannon's bound at this number of levels\n", num(s.BoundGapDB, 2))
+		fmt.Fprintf(w, "  %s dB short of Shannon's bound at this number of levels; %s dB %s than Panter-Dite's error for many levels\n",
+			num(s.BoundGapDB, 2), num(bench.Num(math.Abs(float64(s.HighRateGapDB))), 2), map[bool]string{true: "better", false: "worse"}[s.HighRateGapDB < 0])
 	}
+	fmt.Fprintf(w, "  overload beyond %.6g and %.6g: %.3g of the samples, %.3g %% of the error\n",
+		float64(s.Lo), float64(s.Hi), float64(s.OverloadP), 100*float64(s.OverloadMSE/s.MSE))
 	fmt.Fprint(w, "  SNR with the level off by")
 	for _, o := range s.Off {
 		fmt.Fprintf(w, " %+g dB: %s", o.DB, num(o.SNRDB, 2))
@@ -125,6 +132,7 @@ func printStaircase(w io.Writer, s bench.Staircase) {
 	for _, n := range s.Notes {
 		fmt.Fprintf(w, "  %s\n", n)
 	}
+	printTrace(w, s)
 	fmt.Fprintf(w, "  %6s %18s %18s %18s\n", "cell", "from", "to", "value")
 	for k, y := range s.Values {
 		from, to := "-inf", "inf"
@@ -135,6 +143,17 @@ func printStaircase(w io.Writer, s bench.Staircase) {
 			to = fmt.Sprintf("%.10g", s.Thresholds[k])
 		}
 		fmt.Fprintf(w, "  %6d %18s %18s %18.10g\n", k, from, to, y)
+	}
+}
+
+// printTrace prints a designer's convergence, a round a line.
+func printTrace(w io.Writer, s bench.Staircase) {
+	if len(s.Trace) == 0 {
+		return
+	}
+	fmt.Fprintf(w, "  %6s  %s\n", "round", s.TraceOf)
+	for i, x := range s.Trace {
+		fmt.Fprintf(w, "  %6d  %.10g\n", i, x)
 	}
 }
 

@@ -53,7 +53,7 @@ func Decibels(a, b float64) float64 { return 10 * math.Log10(a/b) }
 // Power is the mean square of d.
 func Power(d Density) float64 {
 	lo, hi := d.Support()
-	_, power := around(d, lo, hi, 0)
+	_, power := About(d, lo, hi, 0)
 	return power
 }
 

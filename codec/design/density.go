@@ -94,8 +94,8 @@ func Evaluate(d Density, thresholds, values []float64) Figures {
 	if n := len(values); n > 1 {
 		lo, hi := d.Support()
 		left, right := 2*values[0]-thresholds[0], 2*values[n-1]-thresholds[n-2]
-		p, mse := around(d, lo, min(left, hi), values[0])
-		q, more := around(d, max(right, lo), hi, values[n-1])
+		p, mse := About(d, lo, min(left, hi), values[0])
+		q, more := About(d, max(right, lo), hi, values[n-1])
 		f.Overloaded, f.Overload = p+q, mse+more
 	}
 	f.Granular = max(0, f.MSE-f.Overload)
@@ -114,7 +114,7 @@ func EvaluateDensity(d Density, thresholds, values []float64) (mse, entropy floa
 		if k < len(thresholds) {
 			b = min(b, thresholds[k])
 		}
-		p, e := around(d, a, b, y)
+		p, e := About(d, a, b, y)
 		mse += e
 		if p > 0 {
 			entropy -= p * math.Log2(p)
@@ -123,9 +123,9 @@ func EvaluateDensity(d Density, thresholds, values []float64) (mse, entropy floa
 	return mse, max(0, entropy)
 }
 
-// around returns the probability of (a, b) and its second moment about y; 0
+// About returns the probability of (a, b) and its second moment about y; 0
 // where a >= b.
-func around(d Density, a, b, y float64) (prob, moment float64) {
+func About(d Density, a, b, y float64) (prob, moment float64) {
 	if !(a < b) {
 		return 0, 0
 	}

@@ -46,11 +46,13 @@ func (o *EntropyOptions) check() error {
 // lossless coding is met before 1e-18 of it.
 func atRate(rate, power float64, solve func(lambda float64) Solution) Solution {
 	var best Solution
+	var tried []float64
 	found := false
 	dear, cheap := math.Inf(1), 0.0 // prices known to be above and below
 	lambda := 2 * math.Ln2 * power * math.Exp2(-2*rate)
 	for round := 0; round < 60 && lambda > power*1e-18; round++ {
 		s := solve(lambda)
+		tried = append(tried, s.Entropy)
 		if s.Entropy <= rate {
 			dear = lambda
 			if !found || s.MSE < best.MSE {
@@ -64,6 +66,7 @@ func atRate(rate, power float64, solve func(lambda float64) Solution) Solution {
 		}
 		lambda = nextPrice(lambda, s.Entropy-rate, cheap, dear, round)
 	}
+	best.Trace, best.TraceOf = tried, "entropy in bits at each price tried"
 	return best
 }
 

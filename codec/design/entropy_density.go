@@ -118,6 +118,7 @@ func (c *codedDensity) atRate(s Solution, t []float64, rate float64) Solution {
 	best, found := s, s.Entropy <= rate
 	slope := -0.5 / math.Ln2 // bits per unit of ln lambda, high-resolution law
 	rounds := s.Rounds
+	tried := append(s.Trace, s.Entropy)
 	for range 40 {
 		off := rate - 4e-10 - s.Entropy
 		if math.Abs(off) < 4e-10 {
@@ -128,6 +129,7 @@ func (c *codedDensity) atRate(s Solution, t []float64, rate float64) Solution {
 		c.lambda *= math.Exp(step)
 		s = c.solution(t)
 		rounds += s.Rounds
+		tried = append(tried, s.Entropy)
 		if s.Entropy <= rate && (!found || s.MSE < best.MSE) {
 			best, found = s, true
 		}
@@ -135,6 +137,6 @@ func (c *codedDensity) atRate(s Solution, t []float64, rate float64) Solution {
 			slope = now
 		}
 	}
-	best.Rounds = rounds
+	best.Rounds, best.Trace, best.TraceOf = rounds, tried, "entropy in bits at each price tried"
 	return best
 }

@@ -51,7 +51,8 @@ func exactData(h Histogram, n int, sym Symmetry) Solution {
 	} else {
 		var edges []int
 		var proven bool
-		edges, s.Rounds, proven = optimalEdges(half, cells, pinned)
+		edges, s.Trace, proven = optimalEdges(half, cells, pinned)
+		s.Rounds, s.TraceOf = len(s.Trace), cellsTried[sym]
 		if !proven { // rounding ate the proof: never seen
 			s.Proof, s.Starts = Local, 1
 		}
@@ -74,8 +75,13 @@ func spareNote(distinct, cells int, sym Symmetry) string {
 		distinct, what, cells, side, cells-distinct, side)
 }
 
+// cellsTried is what an exact search leaves as its trace.
+var cellsTried = map[Symmetry]string{
+	Free: "cells of the optimum at each penalty tried", Mirror: "cells a side of the optimum at each penalty tried",
+}
+
 // optimalEdges returns the bin edges of the optimal cells (see searchPath).
-func optimalEdges(h Histogram, cells int, pinned bool) (edges []int, rounds int, proven bool) {
+func optimalEdges(h Histogram, cells int, pinned bool) (edges []int, tried []float64, proven bool) {
 	var c cellCost
 	unit := 1.0
 	if w := newWordSums(h, pinned); w != nil {
@@ -83,9 +89,9 @@ func optimalEdges(h Histogram, cells int, pinned bool) (edges []int, rounds int,
 	} else {
 		c = newRealSums(h, pinned)
 	}
-	edges, rounds, proven = searchPath(c, len(h.Values), cells, panterDitePenalty(h, cells)/unit)
+	edges, tried, proven = searchPath(c, len(h.Values), cells, panterDitePenalty(h, cells)/unit)
 	settle(c, edges)
-	return edges, rounds, proven
+	return edges, tried, proven
 }
 
 // panterDitePenalty is -dD/dn of the high-resolution law D = (integral of

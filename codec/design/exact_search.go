@@ -21,8 +21,8 @@ func (f support) unless(s support, inside bool) support {
 	return f
 }
 
-// searchPath returns a least-cost path of exactly n edges, the number of
-// penalties tried, and whether the path is proven to cost the least: no path
+// searchPath returns a least-cost path of exactly n edges, the lengths of the
+// paths at the penalties tried, and whether the path is proven to cost the least: no path
 // of n edges costs less than the cheapest of any length with a penalty, less
 // n penalties. Under the quadrangle inequality the least cost F(k) of k
 // edges is convex in k, so every n has a penalty at which it is among the
@@ -30,24 +30,24 @@ func (f support) unless(s support, inside bool) support {
 // path of n edges out of a shorter and a longer one. Source: A. Aggarwal,
 // B. Schieber, T. Tokuyama, Discrete Comput. Geom. 12 (1994), theorem and
 // lemma from memory, proofs redone in swap.
-func searchPath(c cellCost, bins, n int, guess float64) (edges []int, rounds int, proven bool) {
+func searchPath(c cellCost, bins, n int, guess float64) (edges []int, tried []float64, proven bool) {
 	p := newPenalised(c, bins)
 	few := support{[]int{0, bins}, c.cost(0, bins), math.Inf(1)}
 	many := support{everyBin(bins), 0, 0}
 	if n == 1 || n == bins {
-		return map[bool][]int{true: few.edges, false: many.edges}[n == 1], 0, true
+		return map[bool][]int{true: few.edges, false: many.edges}[n == 1], nil, true
 	}
 	penalty, line := guess, math.Inf(1)
 	for {
-		rounds++
 		p.run(penalty)
 		s := support{edges: p.path(), penalty: penalty}
 		k := s.len()
+		tried = append(tried, float64(k))
 		if k == n {
-			return s.edges, rounds, true
+			return s.edges, tried, true
 		}
 		inside := k > few.len() && k < many.len()
-		if p.best[bins] >= line*(1-1e-14) || rounds >= 200 || !inside && !math.IsInf(line, 1) {
+		if p.best[bins] >= line*(1-1e-14) || len(tried) >= 200 || !inside && !math.IsInf(line, 1) {
 			break
 		}
 		s.cost = pathCost(c, s.edges)
@@ -56,11 +56,11 @@ func searchPath(c cellCost, bins, n int, guess float64) (edges []int, rounds int
 		} else {
 			many = many.unless(s, inside)
 		}
-		penalty, line = nextPenalty(few, many, n, rounds)
+		penalty, line = nextPenalty(few, many, n, len(tried))
 	}
 	edges = swap(few.edges, many.edges, n)
 	gap := pathCost(c, edges) + penalty*float64(n) - p.best[bins]
-	return edges, rounds, gap <= 1e-12*p.best[bins]
+	return edges, tried, gap <= 1e-12*p.best[bins]
 }
 
 // nextPenalty returns the penalty to try next: now the one at which few and

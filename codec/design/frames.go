@@ -10,12 +10,29 @@ import (
 // whose rounding noise n lsb^2/12 is the least error the open value counts.
 //
 // Gains, in dB, take the frames once at each gain instead of as they are,
-// saturating at the words' ends: with -6, 0, 6 a table serves talkers louder
-// or softer than these as well, for less on these themselves.
+// saturating at the words' ends (see SpreadGains).
 type Take struct {
 	Frames [][]int16
 	LSB    float64
 	Gains  []float64
+}
+
+// SpreadGains are gains up to db (at least 0) up and down in even steps of at
+// most 7 dB, 0 among them; none for 0. With them a table serves talkers louder
+// or softer than those it was made on as well, for less on these themselves.
+// On ten recordings, each coded by a table made on the other nine, 12 dB keep a
+// half to two thirds of the mean gain over mu-law and take the worst loss, on
+// the loudest, from 6.4 dB to 0.4; at 18 dB little but a logarithmic law is left.
+func SpreadGains(db float64) []float64 {
+	if !(db > 0) {
+		return nil
+	}
+	steps := int(math.Ceil(db / 7))
+	var out []float64
+	for i := -steps; i <= steps; i++ {
+		out = append(out, db*float64(i)/float64(steps))
+	}
+	return out
 }
 
 // atGains returns a take as it is, or one for each gain.

@@ -93,6 +93,9 @@ func best(d Density, n int, o lloydOptions, tries []attempt) (Solution, error) {
 			continue
 		}
 		s := Solution{Values: try.on.unfold(y), Rounds: rounds, Residual: res, Trace: w.trace}
+		if o.trace {
+			s.TraceOf = "mean squared error"
+		}
 		s.Thresholds = midpoints(s.Values)
 		s.MSE, s.Entropy = EvaluateDensity(d, s.Thresholds, s.Values)
 		if out.Values == nil || s.MSE < out.MSE*(1-1e-12) {

@@ -113,7 +113,7 @@ func (w *work) conditions(s *state) {
 	n := len(s.y)
 	s.res, s.mse = 0, 0
 	if w.odd {
-		_, e := around(w.d, 0, s.y[0]/2, 0)
+		_, e := About(w.d, 0, s.y[0]/2, 0)
 		s.mse += e
 	}
 	var before float64 // density at a

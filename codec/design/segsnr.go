@@ -67,7 +67,7 @@ func SegSNR(f Frames, n int, sym Symmetry, open bool, opt SegOptions) (Solution,
 	}
 	s.MSE, s.Entropy = EvaluateData(f.Histogram(), s.Thresholds, s.Values)
 	if opt.Trace {
-		s.Trace = won.trace
+		s.Trace, s.TraceOf = won.trace, "mean frame SNR in dB"
 	}
 	return s, nil
 }

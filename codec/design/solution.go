@@ -7,6 +7,8 @@
 // latter.
 package design
 
+import "fmt"
+
 // Proof says what is known about a Solution's optimality.
 type Proof string
 
@@ -47,8 +49,19 @@ type Solution struct {
 	Starts int
 	// Notes are sentences worth printing (what symmetry cost, what was tied).
 	Notes []string
-	// Trace holds the objective after each round when asked for.
-	Trace []float64
+	// Trace is the convergence, one number a round; TraceOf says of what, with
+	// its unit ("mean squared error"). Filled where asked for, or for free.
+	Trace   []float64
+	TraceOf string
+}
+
+// Claim is Proof in words to print, with the number of starts where that is
+// what stands behind it.
+func (s Solution) Claim() string {
+	if s.Proof == Local {
+		return fmt.Sprintf("local, best of %d", max(1, s.Starts))
+	}
+	return string(s.Proof)
 }
 
 // Symmetry says whether a table must be its own mirror image.

@@ -54,8 +54,11 @@ type Material struct {
 	// Density gives the model named from, scaled by the rule scale (rms,
 	// active, fit), and says in words how it was scaled.
 	Density func(from, scale string) (d design.Density, how string, err error)
-	// Frames gives the in-range frames for the segmental aims.
-	Frames func() (*design.Frames, error)
+	// Frames gives the in-range frames for the segmental aims, each as it is and,
+	// where spread is above 0, also at gains up to that many dB up and down.
+	Frames func(spread float64) (*design.Frames, error)
+	// Trace asks designers for their convergence (Solution.Trace).
+	Trace bool
 }
 
 // Made is a finished design.

@@ -35,6 +35,7 @@ var lloydMax = Family{
 	Keys: []Key{
 		fromKey, scaleKey, oneOf("symmetry", "mirror", "free"),
 		oneOf("aim", "mse", "segsnr", "segsnr-open", "entropy"),
+		spreadKey,
 		optional("rate", "a number of bits a sample above 0, at most 16, with aim=entropy", 16),
 		optional("lambda", "a price of a bit above 0, at most 1e6, with aim=entropy", 1e6),
 	},
@@ -51,6 +52,13 @@ var lloydMax = Family{
 	Make:  makeLloydMax,
 }
 
+// spreadKey makes a segmental design serve levels that its recordings do not
+// have.
+var spreadKey = Key{
+	Name: "spread", Accepts: "dB from 0 to 30, with aim=segsnr: serve talkers up to so much louder or softer too",
+	Default: "0", Valid: func(v string) bool { f, ok := parseNumber(v); return ok && f >= 0 && f <= 30 },
+}
+
 // optional is a number above 0 that may be left out.
 func optional(name, accepts string, most float64) Key {
 	return Key{
@@ -65,6 +73,8 @@ func checkLloydMax(s Spec) error {
 	switch {
 	case strings.HasPrefix(aim, "segsnr") && s.Get("from") != "data":
 		return fmt.Errorf("aim=%q goes with from=data only", aim)
+	case !strings.HasPrefix(aim, "segsnr") && s.Number("spread") != 0:
+		return fmt.Errorf("spread=%q goes with aim=segsnr and aim=segsnr-open only", s.Get("spread"))
 	case aim == "entropy" && (rate == "") == (lambda == ""):
 		return fmt.Errorf("aim=entropy needs rate= or lambda=, one of them")
 	case aim != "entropy" && rate+lambda != "":
@@ -87,6 +97,9 @@ func makeLloydMax(s Spec, m Material) (Made, error) {
 		}
 	case s.Need() == FramedData:
 		made.From = "the recordings' frames in range"
+		if s.Number("spread") > 0 {
+			made.From += ", also up to " + s.Get("spread") + " dB louder and softer"
+		}
 	default:
 		made.From = "the recordings' amplitudes"
 	}
@@ -115,13 +128,16 @@ func solve(s Spec, m Material, d design.Density, sym design.Symmetry) (design.So
 		}
 		return entropyConstrained(m, d, opt)
 	case aim != "mse":
-		frames, err := m.Frames()
+		frames, err := m.Frames(s.Number("spread"))
 		if err != nil {
 			return design.Solution{}, err
 		}
-		return design.SegSNR(*frames, s.Levels, sym, aim == "segsnr-open", design.SegOptions{})
+		return design.SegSNR(*frames, s.Levels, sym, aim == "segsnr-open", design.SegOptions{Trace: m.Trace})
 	case d == nil:
 		return design.ExactData(m.Histogram, s.Levels, sym)
+	}
+	if m.Trace {
+		return design.LloydMax(d, s.Levels, sym, design.WithTrace())
 	}
 	return design.LloydMax(d, s.Levels, sym)
 }

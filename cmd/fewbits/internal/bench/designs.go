@@ -47,7 +47,7 @@ func finish(spec family.Spec, got family.Made, who string) made {
 		d.MadeOn = got.From + ", " + who
 	}
 	if sol := got.Solution; sol != nil {
-		d.Proof, d.Rounds, d.Residual = string(sol.Proof), sol.Rounds, Num(sol.Residual)
+		d.Proof, d.Rounds, d.Residual = sol.Claim(), sol.Rounds, Num(sol.Residual)
 	}
 	return made{Design: d, spec: spec, stair: s, grid: s.Grid()}
 }

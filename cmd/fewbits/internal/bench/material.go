@@ -71,12 +71,13 @@ func (p *pool) rms(scale string) (float64, string, error) {
 	return 0, "", fmt.Errorf("scale=%q is not a rule", scale)
 }
 
-// frames gathers the kept frames of all recordings.
-func (p *pool) frames() (*design.Frames, error) {
+// frames gathers the kept frames of all recordings, also up to spread dB louder
+// and softer.
+func (p *pool) frames(spread float64) (*design.Frames, error) {
 	var takes []design.Take
 	for _, s := range p.surveys {
 		if len(s.kept) > 0 {
-			takes = append(takes, design.Take{Frames: s.kept, LSB: s.clip.LSB})
+			takes = append(takes, design.Take{Frames: s.kept, LSB: s.clip.LSB, Gains: design.SpreadGains(spread)})
 		}
 	}
 	f, err := design.NewFrames(takes...)

@@ -26,6 +26,9 @@ type Plan struct {
 	// Shown turns an input's path into the one to show; nil shows it as is.
 	Shown func(path string) string
 
+	// Trace makes MakeStaircases keep the convergence of each design.
+	Trace bool
+
 	Workers  int
 	Progress func(Step)
 }

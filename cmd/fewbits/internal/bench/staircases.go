@@ -26,6 +26,15 @@ type Staircase struct {
 	// BoundGapDB is how far the SNR lies below Shannon's lower bound at the
 	// rate log2 N for the same model.
 	BoundGapDB Num `json:"below_shannon_bound_db"`
+	// HighRateGapDB is how far the MSE lies above Panter and Dite's for many
+	// levels, dB; speech densities come from below, so negative at few levels.
+	HighRateGapDB Num `json:"above_panter_dite_db"`
+	// OverloadMSE is the part of the MSE beyond the overload points.
+	OverloadMSE Num `json:"overload_mse"`
+	// Trace is the designer's convergence, a number a round, of what TraceOf
+	// says; only where asked for.
+	Trace   []float64 `json:"trace,omitempty"`
+	TraceOf string    `json:"trace_of,omitempty"`
 	// Stair is the staircase itself; Words the counts of the recordings' 65,536
 	// words, nil without recordings.
 	Stair *codec.Staircase `json:"-"`
@@ -46,6 +55,7 @@ func MakeStaircases(ctx context.Context, plan Plan, judge string, rms float64) (
 	if err != nil {
 		return nil, refused, err
 	}
+	m.Trace = plan.Trace
 	var out []Staircase
 	for _, spec := range plan.Specs {
 		got, err := spec.Family.Make(spec, m)
@@ -54,6 +64,9 @@ func MakeStaircases(ctx context.Context, plan Plan, judge string, rms float64) (
 		}
 		s := Staircase{Design: finish(spec, got, who).Design, Model: got.From, Stair: got.Stair, Words: words}
 		s.Design.Name = spec.Name()
+		if sol := got.Solution; sol != nil && plan.Trace {
+			s.Trace, s.TraceOf = sol.Trace, sol.TraceOf
+		}
 		d := got.Density
 		if words != nil && d == nil {
 			s.judgeData(m.Histogram, made{stair: got.Stair}.search())
@@ -66,7 +79,7 @@ func MakeStaircases(ctx context.Context, plan Plan, judge string, rms float64) (
 			}
 			s.Model = fmt.Sprintf("%s at %.1f dBov", judge, 20*math.Log10(m.RMS))
 		}
-		s.judge(d, judge, m.RMS)
+		s.judge(d)
 		out = append(out, s)
 	}
 	return out, refused, nil
@@ -80,7 +93,7 @@ func materialFor(ctx context.Context, plan Plan, rms float64) (family.Material, 
 				return nil, "", errors.New("a fitted model needs recordings: name some with --like")
 			}
 			return densityOf(from, rms, "at the level asked for")
-		}, Frames: func() (*design.Frames, error) { return nil, errors.New("frames need --like RECORDING") }}
+		}, Frames: func(float64) (*design.Frames, error) { return nil, errors.New("frames need --like RECORDING") }}
 		return m, nil, "no recordings", nil, nil
 	}
 	e := newEngine(ctx, plan)
@@ -102,35 +115,31 @@ func materialFor(ctx context.Context, plan Plan, rms float64) (family.Material, 
 }
 
 // judge fills in what the density says of the staircase.
-func (s *Staircase) judge(d design.Density, judge string, rms float64) {
+func (s *Staircase) judge(d design.Density) {
 	mse, entropy := design.EvaluateDensity(d, s.Thresholds, s.Values)
-	power := secondMoment(d)
-	s.MSE, s.EntropyBits, s.SNRDB = Num(mse), Num(entropy), Num(10*math.Log10(power/mse))
-	s.OverloadP = Num(outside(d, float64(s.Lo), float64(s.Hi)))
-	s.BoundGapDB = Num(math.NaN())
-	if m, ok := d.(model.Model); ok {
-		// D >= 2^(2h) / (2 pi e) 2^(-2R) (C. E. Shannon 1959).
-		bound := math.Exp2(2*m.Entropy()) / (2 * math.Pi * math.E) / float64(s.Levels) / float64(s.Levels)
-		s.BoundGapDB = Num(10 * math.Log10(mse/bound))
-	}
-	for _, db := range []float64{-12, -6, 6, 12} {
-		k := math.Pow(10, db/20)
-		s.Off = append(s.Off, OffLevel{DB: db, SNRDB: Num(snrScaled(d, s.Thresholds, s.Values, k, power))})
+	s.MSE, s.EntropyBits = Num(mse), Num(entropy)
+	s.SNRDB = Num(design.Decibels(design.Power(d), mse))
+	s.OverloadP, s.OverloadMSE = s.beyond(d)
+	s.BoundGapDB = Num(design.Decibels(mse, design.ShannonBound(d, math.Log2(float64(s.Levels)))))
+	n := float64(s.Levels)
+	s.HighRateGapDB = Num(design.Decibels(mse, design.PanterDite(d)/n/n))
+	for _, db := range offLevels {
+		s.Off = append(s.Off, OffLevel{DB: db, SNRDB: Num(design.SNRAt(d, s.Thresholds, s.Values, db))})
 	}
 }
+
+// offLevels are how far the level may be off from the one designed for, dB.
+var offLevels = []float64{-12, -6, 6, 12}
 
 // judgeData fills in what the recordings say of the staircase.
 func (s *Staircase) judgeData(h design.Histogram, search *measure.Search) {
 	counts := make([]int64, len(h.Weights))
-	var power, over, total float64
+	var power, over, overMSE, total float64
 	for i, w := range h.Weights {
 		counts[i] = int64(w)
 		x := h.Values[i]
 		power += w * x * x
 		total += w
-		if x < float64(s.Lo) || x > float64(s.Hi) {
-			over += w
-		}
 	}
 	indices := make([]int64, len(s.Values))
 	var sum float64
@@ -138,46 +147,33 @@ func (s *Staircase) judgeData(h design.Histogram, search *measure.Search) {
 		k := search.Index(x)
 		e := x - s.Values[k]
 		sum += h.Weights[i] * e * e
+		if x < float64(s.Lo) || x > float64(s.Hi) {
+			over += h.Weights[i]
+			overMSE += h.Weights[i] * e * e
+		}
 		indices[k] += counts[i]
 	}
 	s.Model = "the recordings"
 	s.MSE, s.SNRDB = Num(sum/total), Num(10*math.Log10(power/sum))
-	s.EntropyBits, s.OverloadP, s.BoundGapDB = Num(measure.Entropy(indices)), Num(over/total), Num(math.NaN())
-	for _, db := range []float64{-12, -6, 6, 12} {
+	s.EntropyBits, s.OverloadP, s.OverloadMSE = Num(measure.Entropy(indices)), Num(over/total), Num(overMSE/total)
+	s.BoundGapDB, s.HighRateGapDB = Num(math.NaN()), Num(math.NaN())
+	for _, db := range offLevels {
 		s.Off = append(s.Off, OffLevel{DB: db, SNRDB: Num(search.SNRAt(h.Values, counts, db))})
 	}
 }
 
-// snrScaled is the SNR when the amplitude is k times what d says: the
-// staircase shrinks by k instead.
-func snrScaled(d design.Density, thresholds, values []float64, k, power float64) float64 {
-	t, y := make([]float64, len(thresholds)), make([]float64, len(values))
-	for i := range t {
-		t[i] = thresholds[i] / k
+// beyond is the probability beyond the overload bounds and its part of the
+// mean squared error.
+func (s *Staircase) beyond(d design.Density) (p, mse Num) {
+	lo, hi := d.Support()
+	for _, side := range [2]struct{ a, b, y float64 }{
+		{lo, math.Min(float64(s.Lo), hi), s.Values[0]},
+		{math.Max(float64(s.Hi), lo), hi, s.Values[len(s.Values)-1]},
+	} {
+		if side.a < side.b {
+			q, e := design.About(d, side.a, side.b, side.y)
+			p, mse = p+Num(q), mse+Num(e)
+		}
 	}
-	for i := range y {
-		y[i] = values[i] / k
-	}
-	mse, _ := design.EvaluateDensity(d, t, y)
-	return 10 * math.Log10(power/mse)
-}
-
-// secondMoment is the mean square of the density.
-func secondMoment(d design.Density) float64 {
-	mse, _ := design.EvaluateDensity(d, nil, []float64{0})
-	return mse
-}
-
-// outside is the probability beyond the overload bounds.
-func outside(d design.Density, lo, hi float64) (p float64) {
-	a, b := d.Support()
-	if lo > a {
-		q, _, _ := d.Cell(a, lo)
-		p += q
-	}
-	if hi < b {
-		q, _, _ := d.Cell(hi, b)
-		p += q
-	}
-	return p
+	return p, mse
 }
