@@ -47,10 +47,11 @@ type Material struct {
 	// RMS over all samples; ActiveRMS at the active speech level (NaN where
 	// undefined).
 	RMS, ActiveRMS float64
-	// Histogram of all samples; Exact tells whether its values are the data
-	// themselves rather than bins of finer data.
+	// Histogram of all samples. Within is nil where its values are the data
+	// themselves; where they are bins of finer data, the mean squared distance
+	// to each bin's value.
 	Histogram design.Histogram
-	Exact     bool
+	Within    []float64
 	// Density gives the model named from, scaled by the rule scale (rms,
 	// active, fit), and says in words how it was scaled.
 	Density func(from, scale string) (d design.Density, how string, err error)

@@ -107,10 +107,6 @@ func makeLloydMax(s Spec, m Material) (Made, error) {
 	if err != nil {
 		return made, err
 	}
-	if s.Get("aim") == "mse" && s.Get("from") == "data" && !m.Exact {
-		sol.Proof, sol.Starts = design.Local, 1
-		sol.Notes = append(sol.Notes, "the recordings are finer than the 16-bit grid it was designed on")
-	}
 	made.Solution, made.Notes = &sol, sol.Notes
 	made.Stair, err = of(sol, codec.TieUp)
 	return made, err
@@ -134,12 +130,23 @@ func solve(s Spec, m Material, d design.Density, sym design.Symmetry) (design.So
 		}
 		return design.SegSNR(*frames, s.Levels, sym, aim == "segsnr-open", design.SegOptions{Trace: m.Trace})
 	case d == nil:
-		return design.ExactData(m.Histogram, s.Levels, sym)
+		return exact(m, s.Levels, sym)
 	}
 	if m.Trace {
 		return design.LloydMax(d, s.Levels, sym, design.WithTrace())
 	}
 	return design.LloydMax(d, s.Levels, sym)
+}
+
+// exact is the optimum for data, on bins where they are finer than those.
+func exact(m Material, levels int, sym design.Symmetry) (design.Solution, error) {
+	if m.Within == nil {
+		return design.ExactData(m.Histogram, levels, sym)
+	}
+	fine := design.FineHistogram{Weights: m.Histogram.Weights, Centroids: m.Histogram.Values, Within: m.Within}
+	sol, err := design.ExactFine(fine, levels, sym)
+	sol.Notes = append(sol.Notes, fmt.Sprintf("exact for %d bins of the recordings, which are finer: the best table that cuts no bin", len(m.Within)))
+	return sol, err
 }
 
 // entropyConstrained designs for a density or, where d is nil, for data, and

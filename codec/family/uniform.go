@@ -75,6 +75,9 @@ func makeUniformOptimal(s Spec, m Material) (Made, error) {
 	if s.Get("from") == "data" {
 		made.From = "the recordings' amplitudes"
 		sol, err = design.UniformData(m.Histogram, s.Levels)
+		if m.Within != nil {
+			sol.Proof, sol.Starts = design.Local, 1
+		}
 	} else if made.Density, made.From, err = m.Density(s.Get("from"), s.Get("scale")); err == nil {
 		sol, err = design.OptimalUniform(made.Density, s.Levels)
 	}

@@ -7,14 +7,25 @@ import (
 	"slices"
 )
 
-// mostFrames bounds the frames kept of one clip for designs that need them:
-// ten minutes of 20 ms frames.
-const mostFrames = 30000
+// mostFrames bounds the frames kept for designs that need them: of one clip ten
+// minutes of 20 ms frames, of all twice as much, an even share of each but at
+// least leastFrames.
+const (
+	mostFrames  = 30000
+	leastFrames = 500
+)
+
+// frameShare is the bound on the frames kept of each of so many clips.
+func frameShare(clips int) int {
+	return max(leastFrames, min(mostFrames, 2*mostFrames/max(1, clips)))
+}
 
 // keeper keeps the frames of a clip whose hash of file, channel and position
 // is smallest, so that the choice depends on neither order nor workers.
 type keeper struct {
 	file string
+	unit float64 // amplitude of one word
+	most int     // frames
 	kept []keptFrame
 }
 
@@ -37,7 +48,7 @@ func (k *keeper) consider(list []keptFrame, ch int, at int64, p planes, a, b int
 	binary.LittleEndian.PutUint64(pos[:], uint64(at))
 	binary.LittleEndian.PutUint64(pos[8:], uint64(ch))
 	h.Write(pos[:])
-	return append(list, keptFrame{hash: mix(h.Sum64()), at: at, ch: ch, words: p.asWords(ch, a, b)})
+	return append(list, keptFrame{hash: mix(h.Sum64()), at: at, ch: ch, words: p.asWords(ch, a, b, k.unit)})
 }
 
 // mix spreads a hash's low-order differences over all bits (the finaliser of
@@ -54,7 +65,7 @@ func (k *keeper) take(list []keptFrame) {
 		return
 	}
 	k.kept = append(k.kept, list...)
-	if len(k.kept) >= 2*mostFrames {
+	if len(k.kept) >= 2*k.most {
 		k.trim()
 	}
 }
@@ -71,7 +82,7 @@ func (k *keeper) trim() {
 		}
 		return a.ch - b.ch
 	})
-	k.kept = slices.Clip(k.kept[:min(len(k.kept), mostFrames)])
+	k.kept = slices.Clip(k.kept[:min(len(k.kept), k.most)])
 }
 
 // words returns the kept frames in order of channel and time.
@@ -93,14 +104,14 @@ func (k *keeper) words() [][]int16 {
 	return out
 }
 
-// asWords copies samples a to b of a channel to the 16-bit grid.
-func (p planes) asWords(ch, a, b int) []int16 {
+// asWords copies samples a to b of a channel to a grid of that unit.
+func (p planes) asWords(ch, a, b int, unit float64) []int16 {
 	if p.words != nil {
 		return slices.Clone(p.words[ch][a:b])
 	}
 	out := make([]int16, b-a)
 	for i, x := range p.reals[ch][a:b] {
-		out[i] = int16(min(max(math.Round(x*32768), -32768), 32767))
+		out[i] = int16(min(max(math.Round(x/unit), -32768), 32767))
 	}
 	return out
 }

@@ -21,6 +21,7 @@ type pool struct {
 	active   float64 // samples
 	activeSq float64
 	exact    bool
+	fine     *measure.Fine // where the recordings are finer than 16 bits
 	lsb      float64
 }
 
@@ -44,13 +45,20 @@ func newPool(surveys []*survey) *pool {
 
 // material is the pool as families want it.
 func (p *pool) material() (family.Material, error) {
-	m := family.Material{Exact: p.exact, RMS: math.NaN(), ActiveRMS: math.NaN(), Density: p.density, Frames: p.frames}
+	m := family.Material{RMS: math.NaN(), ActiveRMS: math.NaN(), Density: p.density, Frames: p.frames}
 	if p.energy == 0 {
 		return m, errors.New("the recordings that fitted designs are made on hold no signal at all: name fixed designs with --design, or give other recordings")
 	}
 	m.RMS = math.Sqrt(p.energy / float64(p.samples))
 	if p.active > 0 {
 		m.ActiveRMS = math.Sqrt(p.activeSq / p.active)
+	}
+	if p.fine != nil {
+		m.Histogram.Values, m.Histogram.Weights, m.Within = p.fine.Bins()
+		if p.fine.Exact() {
+			m.Within = nil
+		}
+		return m, nil
 	}
 	values, counts := p.hist.Sparse()
 	m.Histogram = histogramOf(values, counts)
@@ -77,7 +85,7 @@ func (p *pool) frames(spread float64) (*design.Frames, error) {
 	var takes []design.Take
 	for _, s := range p.surveys {
 		if len(s.kept) > 0 {
-			takes = append(takes, design.Take{Frames: s.kept, LSB: s.clip.LSB, Gains: design.SpreadGains(spread)})
+			takes = append(takes, design.Take{Frames: s.kept, LSB: s.clip.LSB, Unit: wordUnit(s.rec.Words(), s.levels.Peak()), Gains: design.SpreadGains(spread)})
 		}
 	}
 	f, err := design.NewFrames(takes...)

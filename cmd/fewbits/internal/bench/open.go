@@ -22,6 +22,7 @@ func (e *engine) openAll(inputs []string, names map[string]bool) ([]*survey, []R
 		refused = append(refused, Refusal{File: e.shown(r.Path), Reason: r.Reason})
 	}
 	e.begin("reading", totalSamples(files))
+	e.share = frameShare(len(files))
 	surveys := make([]*survey, len(files))
 	reasons := make([]error, len(files))
 	err = inOrder(e.ctx, len(files), e.plan.Workers,

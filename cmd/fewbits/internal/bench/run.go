@@ -115,7 +115,11 @@ func (e *engine) designs(r *Results, surveys []*survey) ([][]made, error) {
 
 // makeOn makes every design on the given recordings.
 func (e *engine) makeOn(source []*survey, who string) ([]made, error) {
-	m, err := newPool(source).material()
+	p := newPool(source)
+	if err := e.refine(p); err != nil {
+		return nil, err
+	}
+	m, err := p.material()
 	if err != nil && e.needs(family.Level) {
 		return nil, err
 	}

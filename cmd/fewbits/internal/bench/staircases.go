@@ -69,7 +69,7 @@ func MakeStaircases(ctx context.Context, plan Plan, judge string, rms float64) (
 		}
 		d := got.Density
 		if words != nil && d == nil {
-			s.judgeData(m.Histogram, made{stair: got.Stair}.search())
+			s.judgeData(m, made{stair: got.Stair}.search())
 			out = append(out, s)
 			continue
 		}
@@ -106,6 +106,9 @@ func materialFor(ctx context.Context, plan Plan, rms float64) (family.Material, 
 		return family.Material{}, nil, "", refused, noneLeft(refused)
 	}
 	p := newPool(surveys)
+	if err := e.refine(p); err != nil {
+		return family.Material{}, nil, "", refused, err
+	}
 	m, err := p.material()
 	words := make([]float64, 0, 1<<16)
 	for _, n := range p.hist.Counts() {
@@ -132,7 +135,8 @@ func (s *Staircase) judge(d design.Density) {
 var offLevels = []float64{-12, -6, 6, 12}
 
 // judgeData fills in what the recordings say of the staircase.
-func (s *Staircase) judgeData(h design.Histogram, search *measure.Search) {
+func (s *Staircase) judgeData(m family.Material, search *measure.Search) {
+	h := m.Histogram
 	counts := make([]int64, len(h.Weights))
 	var power, over, overMSE, total float64
 	for i, w := range h.Weights {
@@ -146,10 +150,14 @@ func (s *Staircase) judgeData(h design.Histogram, search *measure.Search) {
 	for i, x := range h.Values {
 		k := search.Index(x)
 		e := x - s.Values[k]
-		sum += h.Weights[i] * e * e
+		square := h.Weights[i] * e * e
+		if m.Within != nil {
+			square += h.Weights[i] * m.Within[i]
+		}
+		sum += square
 		if x < float64(s.Lo) || x > float64(s.Hi) {
 			over += h.Weights[i]
-			overMSE += h.Weights[i] * e * e
+			overMSE += square
 		}
 		indices[k] += counts[i]
 	}

@@ -148,7 +148,7 @@ func (e *engine) readRanges(s *survey) error {
 	var mu sync.Mutex
 	var keep *keeper
 	if e.needs(family.FramedData) {
-		keep = &keeper{file: s.clip.File}
+		keep = &keeper{file: s.clip.File, most: e.share, unit: wordUnit(s.rec.Words(), s.levels.Peak())}
 	}
 	work := func(c chunk) (ranged, error) {
 		p, err := read(s.rec, c.start, c.samples)
