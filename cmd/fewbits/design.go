@@ -36,7 +36,7 @@ func designCommand() *cobra.Command {
 	c.Flags().StringVar(&bits, "bits", "4,6,8", "bits of designs that name none")
 	c.Flags().Float64Var(&level, "level", -20, "level of the model in `dBov`; 0 is an rms of 1")
 	c.Flags().StringArrayVar(&like, "like", nil, "make fitted designs on these recordings; repeatable")
-	c.Flags().BoolVar(&trace, "trace", false, "show how each designer converged")
+	c.Flags().BoolVar(&trace, "trace", false, "show how each designer converged (csv: in place of the cells)")
 	judge := choose(c, "model", "model that designs without one are judged by", model.Names()...)
 	format := choose(c, "format", "how to print", "table", "csv", "json")
 	c.RunE = func(c *cobra.Command, args []string) error {
@@ -49,7 +49,7 @@ func designCommand() *cobra.Command {
 		if err != nil {
 			return err
 		}
-		if err := printStaircases(c.OutOrStdout(), got, format.value); err != nil {
+		if err := printStaircases(c.OutOrStdout(), got, format.value, trace); err != nil {
 			return err
 		}
 		return refusals(c, &bench.Results{Refused: refused})
@@ -91,13 +91,16 @@ func designHelp() string {
 	return b.String()
 }
 
-func printStaircases(w io.Writer, list []bench.Staircase, format string) error {
+func printStaircases(w io.Writer, list []bench.Staircase, format string, trace bool) error {
 	switch format {
 	case "json":
 		e := json.NewEncoder(w)
 		e.SetIndent("", "  ")
 		return e.Encode(map[string]any{"schema": bench.Schema, "designs": list})
 	case "csv":
+		if trace {
+			return tracesCSV(w, list)
+		}
 		return staircasesCSV(w, list)
 	}
 	for i, s := range list {
@@ -171,6 +174,19 @@ func staircasesCSV(w io.Writer, list []bench.Staircase) error {
 				to = full(bench.Num(s.Thresholds[k]))
 			}
 			out.Write([]string{s.Spec, strconv.Itoa(k), from, to, full(bench.Num(y))})
+		}
+	}
+	out.Flush()
+	return out.Error()
+}
+
+// tracesCSV writes a line per round, in full precision.
+func tracesCSV(w io.Writer, list []bench.Staircase) error {
+	out := csv.NewWriter(w)
+	out.Write([]string{"design", "round", "value", "of"})
+	for _, s := range list {
+		for i, x := range s.Trace {
+			out.Write([]string{s.Spec, strconv.Itoa(i), full(bench.Num(x)), s.TraceOf})
 		}
 	}
 	out.Flush()
