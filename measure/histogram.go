@@ -73,6 +73,13 @@ func (h *Histogram) fold() {
 // AddCount counts word n times.
 func (h *Histogram) AddCount(word int16, n int64) { h.counts[int(word)+words16/2] += n }
 
+// AddCounts adds 65,536 counts, that of word w at int(w)+32768.
+func (h *Histogram) AddCounts(counts []int64) {
+	for i, n := range counts[:words16] {
+		h.counts[i] += n
+	}
+}
+
 // Merge adds the counts of o, whose counts stay the same.
 func (h *Histogram) Merge(o *Histogram) {
 	o.fold()

@@ -73,7 +73,7 @@ func (s *Scan) flatBelow(t top, sign int, lsb float64) bool {
 	if beyondSign(t.value, sign) < flatSteps*lsb || t.flat.samples < flatSamples {
 		return false
 	}
-	near, _ := s.tops.crown(sign)
+	near, _ := s.magnitudes().crown(sign)
 	return float64(t.flat.samples) >= flatShare*float64(near)
 }
 
@@ -97,7 +97,7 @@ func (s *Scan) clipFinding(where string, t tally) Finding {
 // crowded reports peaks that crowd under a ceiling without being equal.
 func (s *Scan) crowded(lsb float64) []Finding {
 	for sign, t := range []top{s.runs.closed().upper, s.runs.closed().lower} {
-		crown, below := s.tops.crown(sign)
+		crown, below := s.magnitudes().crown(sign)
 		if crown < crowdSamples || beyondSign(t.value, sign) < crowdSteps*lsb || float64(crown) < crowdRatio*float64(below) {
 			continue
 		}

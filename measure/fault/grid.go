@@ -15,7 +15,8 @@ type grid struct {
 
 func newGrid() grid { return grid{counts: make([]int64, 1<<16)} }
 
-func (g *grid) add(x []float64) {
+// add counts samples; those that no word expresses go to off as well.
+func (g *grid) add(x []float64, off *tops) {
 	g.total += int64(len(x))
 	for _, v := range x {
 		v *= 1 << 15
@@ -23,8 +24,32 @@ func (g *grid) add(x []float64) {
 			g.counts[w+1<<15]++
 			continue
 		}
+		off.add(v/(1<<15), 1)
 		g.addOff(v)
 	}
+}
+
+func (g *grid) addWords(words []int16) {
+	g.total += int64(len(words))
+	counts := (*[1 << 16]int64)(g.counts)
+	for _, w := range words {
+		counts[uint16(w)^0x8000]++
+	}
+}
+
+// join adds what another grid counted.
+func (g *grid) join(o *grid) {
+	for i, n := range o.counts {
+		g.counts[i] += n
+	}
+	g.off, g.over, g.total = g.off+o.off, g.over+o.over, g.total+o.total
+	g.low |= o.low
+	g.finer = g.finer || o.finer
+}
+
+func (g *grid) reset() {
+	clear(g.counts)
+	*g = grid{counts: g.counts}
 }
 
 // addOff takes a sample, in 16-bit steps, that no 16-bit word expresses.

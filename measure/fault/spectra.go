@@ -38,10 +38,7 @@ type spectra struct {
 }
 
 func newSpectra(rate int) *spectra {
-	n := 64
-	for float64(n) < segmentSeconds*float64(rate) && n < 1<<14 {
-		n *= 2
-	}
+	n := segmentLength(rate)
 	s := &spectra{rate: rate, fft: fourier.NewFFT(n), window: make([]float64, n),
 		buf: make([]float64, n), work: make([]float64, n), coeff: make([]complex128, n/2+1), stride: n / 2}
 	for i := range s.window {
@@ -54,6 +51,36 @@ func newSpectra(rate int) *spectra {
 	}
 	s.scale = 2 / (energy * float64(rate))
 	return s
+}
+
+// Segments says which segments a scan of n samples (one channel) at rate Hz
+// keeps: samples at i*stride to i*stride + length for i from 0 to count - 1.
+// Feed them to AddSegment where the samples are joined in parts.
+func Segments(rate int, n int64) (count int, stride, length int64) {
+	length = int64(segmentLength(rate))
+	if n < length {
+		return 0, length / 2, length
+	}
+	for stride = length / 2; ; stride *= 2 {
+		if whole := (n-length)/stride + 1; whole < maxSegments {
+			return int(whole), stride, length
+		}
+	}
+}
+
+// AddSegment takes the next segment of Segments.
+func (s *Scan) AddSegment(x []float64) {
+	copy(s.spectra.buf, x)
+	s.spectra.segments = append(s.spectra.segments, s.spectra.bands())
+}
+
+// segmentLength is that of a segment in samples, a power of two.
+func segmentLength(rate int) int {
+	n := 64
+	for float64(n) < segmentSeconds*float64(rate) && n < 1<<14 {
+		n *= 2
+	}
+	return n
 }
 
 func (s *spectra) add(x []float64) {

@@ -13,12 +13,34 @@ const (
 	topMask  = uint64(1)<<(63-topShift) - 1 // without the sign
 )
 
-func (t *tops) add(x []float64) {
-	for _, v := range x {
-		b := math.Float64bits(v)
-		key := int(b>>topShift&topMask) - topBase
-		t.bins[b>>63][min(max(key, 0), topBins-1)]++
+// add counts n samples at v.
+func (t *tops) add(v float64, n int64) {
+	b := math.Float64bits(v)
+	key := int(b>>topShift&topMask) - topBase
+	t.bins[b>>63][min(max(key, 0), topBins-1)] += n
+}
+
+// join adds the counts of o.
+func (t *tops) join(o *tops) {
+	for sign := range t.bins {
+		for i, n := range o.bins[sign] {
+			t.bins[sign][i] += n
+		}
 	}
+}
+
+// magnitudes are all samples, on the 16-bit grid and off it.
+func (s *Scan) magnitudes() *tops {
+	if s.crowns == nil {
+		s.crowns = new(tops)
+		*s.crowns = s.tops
+		for i, n := range s.grid.counts {
+			if n > 0 {
+				s.crowns.add(float64(i-1<<15)/(1<<15), n)
+			}
+		}
+	}
+	return s.crowns
 }
 
 // crown counts the samples of one sign (0 positive, 1 negative) in the three

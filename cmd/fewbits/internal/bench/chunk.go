@@ -1,6 +1,8 @@
 package bench
 
 import (
+	"sync"
+
 	"fewbits/samples"
 )
 
@@ -32,21 +34,42 @@ type planes struct {
 	reals [][]float64
 }
 
-// read fetches a stretch of a recording.
+// spareWords and spareReals hold planes that are done with.
+var spareWords, spareReals sync.Pool
+
+// plane takes a slice of n samples from a pool, or makes one.
+func plane[T int16 | float64](spare *sync.Pool, n int64) []T {
+	if s, ok := spare.Get().(*[]T); ok && int64(cap(*s)) >= n {
+		return (*s)[:n]
+	}
+	return make([]T, n, max(n, chunkSamples+chunkSamples/4))
+}
+
+// read fetches a stretch of a recording; done gives the planes back.
 func read(r *samples.Recording, start, n int64) (p planes, err error) {
 	channels := r.Info().Channels
 	if r.Words() {
 		p.words = make([][]int16, channels)
 		for c := range p.words {
-			p.words[c] = make([]int16, n)
+			p.words[c] = plane[int16](&spareWords, n)
 		}
 		return p, r.ReadWords(p.words, start)
 	}
 	p.reals = make([][]float64, channels)
 	for c := range p.reals {
-		p.reals[c] = make([]float64, n)
+		p.reals[c] = plane[float64](&spareReals, n)
 	}
 	return p, r.Read(p.reals, start)
+}
+
+// done allows the planes to be used again; nothing may hold on to them.
+func (p planes) done() {
+	for _, w := range p.words {
+		spareWords.Put(&w)
+	}
+	for _, x := range p.reals {
+		spareReals.Put(&x)
+	}
 }
 
 // samples is the length of each plane.

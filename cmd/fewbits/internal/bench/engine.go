@@ -16,7 +16,8 @@ type engine struct {
 	plan   Plan
 	tokens chan struct{} // one per worker: whoever works on samples holds one
 	hists  sync.Pool
-	share  int // of frames kept of each clip
+	parts  sync.Pool // of *fault.Part
+	share  int       // of frames kept of each clip
 
 	mu   sync.Mutex
 	step Step

@@ -7,41 +7,42 @@ import (
 	"fewbits/measure/fault"
 )
 
-// scanFaults reads a recording once more, channel by channel in order, and
-// enters what is wrong with it.
-func (e *engine) scanFaults(s *survey, per []measure.Levels) error {
+// findFaults judges what the first pass gathered, and spectra of segments
+// spread over the recording, and enters what is wrong with it.
+func (e *engine) findFaults(s *survey, all stretch) error {
 	scans := make([]*fault.Scan, s.clip.Channels)
 	for c := range scans {
 		scans[c] = fault.NewScan(s.clip.RateHz)
+		scans[c].Join(all.faults[c])
+		e.parts.Put(all.faults[c])
 	}
-	for _, c := range chunksOf(s.clip.Samples, s.frame) {
-		if err := e.scanChunk(s, c, scans); err != nil {
-			return err
-		}
+	if err := e.readSegments(s, scans); err != nil {
+		return err
 	}
 	s.clip.Findings = []Finding{}
 	for c, scan := range scans {
-		s.enter(c, scan.Findings(s.context(&per[c])))
+		s.enter(c, scan.Findings(s.context(&all.levels[c])))
 	}
 	return nil
 }
 
-func (e *engine) scanChunk(s *survey, c chunk, scans []*fault.Scan) error {
+// readSegments feeds the scans their spectra.
+func (e *engine) readSegments(s *survey, scans []*fault.Scan) error {
 	e.tokens <- struct{}{}
 	defer func() { <-e.tokens }()
-	if err := e.ctx.Err(); err != nil {
-		return err
-	}
-	p, err := read(s.rec, c.start, c.samples)
-	if err != nil {
-		return err
-	}
-	for ch, scan := range scans {
-		if p.words != nil {
-			scan.AddWords(p.words[ch])
-		} else {
-			scan.Add(p.reals[ch])
+	count, stride, length := fault.Segments(s.clip.RateHz, s.clip.Samples)
+	for i := range int64(count) {
+		if err := e.ctx.Err(); err != nil {
+			return err
 		}
+		p, err := read(s.rec, i*stride, length)
+		if err != nil {
+			return err
+		}
+		for c, scan := range scans {
+			scan.AddSegment(p.asReals(c))
+		}
+		p.done()
 	}
 	return nil
 }

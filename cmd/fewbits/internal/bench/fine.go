@@ -28,6 +28,7 @@ func (e *engine) refine(p *pool) error {
 			if err != nil {
 				return nil, err
 			}
+			defer x.done()
 			f := spare.Get().(*measure.Fine)
 			f.Reset()
 			for ch := range s.clip.Channels {

@@ -35,6 +35,7 @@ func (e *engine) measure(s *survey, designs []made) (*outcome, error) {
 		if err != nil {
 			return codedChunk{}, err
 		}
+		defer p.done()
 		r := codedChunk{coded: c.code(s, p, c0, e.plan.Settings)}
 		r.envelope, r.spread = tr.envelope(p, c0), spreadOf(s, r.coded, len(designs))
 		r.rows = rows.format(s, c0, r.coded)

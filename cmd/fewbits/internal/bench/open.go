@@ -63,10 +63,7 @@ func (e *engine) openOne(file string) (s *survey, err error) {
 			rec.Close()
 		}
 	}()
-	sum, err := rec.SHA256()
-	if err != nil {
-		return nil, err
-	}
+	sum := later(rec.SHA256)
 	next, did, err := prepare.Apply(rec, e.plan.Steps)
 	if err != nil {
 		return nil, err
@@ -82,12 +79,23 @@ func (e *engine) openOne(file string) (s *survey, err error) {
 		rec = s.rec
 	}
 	e.fitClip(s)
-	s.clip.SHA256 = sum
+	if s.clip.SHA256, err = sum(); err != nil {
+		return nil, err
+	}
 	s.clip.Preparation = append(s.clip.Preparation, did...)
 	if e.plan.Talker != nil {
 		s.clip.Talker = e.plan.Talker.FindString(filepath.ToSlash(file))
 	}
 	return s, nil
+}
+
+// later starts f and returns what waits for its result.
+func later[T any](f func() (T, error)) func() (T, error) {
+	var t T
+	var err error
+	done := make(chan struct{})
+	go func() { t, err = f(); close(done) }()
+	return func() (T, error) { <-done; return t, err }
 }
 
 // levelled brings a clip's active speech level to the level asked for.

@@ -6,6 +6,7 @@ import (
 
 	"fewbits/codec/family"
 	"fewbits/measure"
+	"fewbits/measure/fault"
 	"fewbits/samples"
 )
 
@@ -25,14 +26,15 @@ type survey struct {
 	quietLen int64
 }
 
-// stretch is what a chunk adds to a survey.
+// stretch is what a chunk adds to a survey, a slot a channel.
 type stretch struct {
 	levels []measure.Levels
 	active []*measure.Activity
+	faults []*fault.Part
 }
 
-// survey reads a recording twice: levels and active speech level, then which
-// frames are in range.
+// survey reads a recording twice: levels, active speech level and faults, then
+// which frames are in range.
 func (e *engine) survey(rec *samples.Recording, file string) (*survey, error) {
 	info := rec.Info()
 	s := &survey{rec: rec, frame: frameSamples(info.Rate, e.plan.FrameSeconds), hist: new(measure.Histogram)}
@@ -41,86 +43,107 @@ func (e *engine) survey(rec *samples.Recording, file string) (*survey, error) {
 		Seconds: float64(info.Frames) / float64(info.Rate), Warnings: append([]string{}, info.Warnings...),
 		Preparation: []string{}, Fits: []Fit{},
 	}
-	per, times, err := e.readLevels(s)
+	all, err := e.readLevels(s)
 	if err != nil {
 		return nil, err
 	}
-	e.settleLevels(s, per, times)
+	e.settleLevels(s, all)
 	if err := e.readRanges(s); err != nil {
 		return nil, err
 	}
-	return s, e.scanFaults(s, per)
+	return s, e.findFaults(s, all)
 }
 
 // readLevels is the first pass over one recording.
-func (e *engine) readLevels(s *survey) ([]measure.Levels, []*measure.Activity, error) {
+func (e *engine) readLevels(s *survey) (stretch, error) {
 	var mu sync.Mutex
-	rate := float64(s.clip.RateHz)
-	per := make([]measure.Levels, s.clip.Channels)
-	times := make([]*measure.Activity, s.clip.Channels)
-	for c := range times {
-		times[c] = measure.NewActivity(rate)
-	}
+	rate := s.clip.RateHz
+	all := newStretch(s.clip.Channels, rate, 0, e.part)
 	work := func(c chunk) (stretch, error) {
-		warm := min(c.start, int64(measure.WarmUpSeconds*rate))
+		warm := min(c.start, int64(measure.WarmUpSeconds*float64(rate)))
 		p, err := read(s.rec, c.start-warm, c.samples+warm)
 		if err != nil {
 			return stretch{}, err
 		}
-		h := e.histogram()
-		defer e.giveBack(h)
-		t := p.survey(int(warm), rate, h)
-		mu.Lock()
-		defer mu.Unlock()
-		s.hist.Merge(h)
+		defer p.done()
+		t := newStretch(s.clip.Channels, rate, c.start, e.part)
+		p.survey(int(warm), t)
+		if p.reals != nil {
+			mu.Lock()
+			defer mu.Unlock()
+			for _, x := range p.reals {
+				s.hist.Add(x[warm:])
+			}
+		}
 		return t, nil
 	}
 	err := chunks(e, s, work, func(_ chunk, t stretch) error {
-		for c := range per {
-			per[c].Merge(&t.levels[c])
-			times[c].Merge(t.active[c])
+		for c := range t.levels {
+			all.levels[c].Merge(&t.levels[c])
+			all.active[c].Merge(t.active[c])
+			all.faults[c].Join(t.faults[c])
+			e.parts.Put(t.faults[c])
 		}
 		return nil
 	})
-	return per, times, err
+	if s.rec.Words() {
+		for _, p := range all.faults {
+			s.hist.AddCounts(p.Counts())
+		}
+	}
+	return all, err
 }
 
-// survey sums a chunk whose first warm samples belong to the chunk before.
-func (p planes) survey(warm int, rate float64, h *measure.Histogram) stretch {
-	n := max(len(p.words), len(p.reals))
-	t := stretch{levels: make([]measure.Levels, n), active: make([]*measure.Activity, n)}
-	for c := range n {
-		a := measure.NewActivity(rate)
-		if p.words != nil {
-			w := p.words[c]
-			a.WarmWords(w[:warm])
-			a.AddWords(w[warm:])
-			t.levels[c].AddWords(w[warm:])
-			h.AddWords(w[warm:])
-		} else {
-			x := p.reals[c]
-			a.Warm(x[:warm])
-			a.Add(x[warm:])
-			t.levels[c].Add(x[warm:])
-			h.Add(x[warm:])
-		}
-		t.active[c] = a
+// newStretch is empty; part makes a fault part for a rate and a first sample.
+func newStretch(channels, rate int, start int64, part func(rate int, start int64) *fault.Part) stretch {
+	t := stretch{levels: make([]measure.Levels, channels)}
+	for range channels {
+		t.active = append(t.active, measure.NewActivity(float64(rate)))
+		t.faults = append(t.faults, part(rate, start))
 	}
 	return t
 }
 
+// part borrows an empty part.
+func (e *engine) part(rate int, start int64) *fault.Part {
+	if p, ok := e.parts.Get().(*fault.Part); ok {
+		p.Reset(rate, start)
+		return p
+	}
+	return fault.NewPart(rate, start)
+}
+
+// survey sums a chunk whose first warm samples belong to the chunk before.
+func (p planes) survey(warm int, t stretch) {
+	for c := range t.levels {
+		if p.words != nil {
+			w := p.words[c]
+			t.active[c].WarmWords(w[:warm])
+			t.active[c].AddWords(w[warm:])
+			t.levels[c].AddWords(w[warm:])
+			t.faults[c].AddWords(w[warm:])
+			continue
+		}
+		x := p.reals[c]
+		t.active[c].Warm(x[:warm])
+		t.active[c].Add(x[warm:])
+		t.levels[c].Add(x[warm:])
+		t.faults[c].Add(x[warm:])
+	}
+}
+
 // settleLevels turns the sums into the clip's figures and the channels' rules
 // for what is in range. A clip's figures pool its channels.
-func (e *engine) settleLevels(s *survey, per []measure.Levels, times []*measure.Activity) {
+func (e *engine) settleLevels(s *survey, all stretch) {
 	var activeEnergy float64
-	for c := range per {
-		s.levels.Merge(&per[c])
-		level, activity := times[c].Result()
+	for c := range all.levels {
+		s.levels.Merge(&all.levels[c])
+		level, activity := all.active[c].Result()
 		s.activeSq = append(s.activeSq, math.Pow(10, level/10))
 		s.inRange = append(s.inRange, measure.RangeThreshold(level, e.plan.RangeDB))
 		if !math.IsNaN(level) {
-			s.active += activity * float64(per[c].Samples)
-			activeEnergy += per[c].Energy()
+			s.active += activity * float64(all.levels[c].Samples)
+			activeEnergy += all.levels[c].Energy()
 		}
 	}
 	l, c := &s.levels, &s.clip
@@ -155,6 +178,7 @@ func (e *engine) readRanges(s *survey) error {
 		if err != nil {
 			return ranged{}, err
 		}
+		defer p.done()
 		in, out := e.histogram(), e.histogram()
 		defer e.giveBack(in)
 		defer e.giveBack(out)
