@@ -140,23 +140,30 @@ type Fit struct {
 
 // Design is one staircase of the comparison.
 type Design struct {
-	Spec        string             `json:"spec"` // as typed
-	Name        string             `json:"name"` // safe for every file system
-	Family      string             `json:"family"`
-	Levels      int                `json:"levels"`
-	Bits        int                `json:"bits"`
-	MadeOn      string             `json:"made_on"` // "fixed", "a model ...", "the recordings it is tested on", ...
-	Thresholds  []float64          `json:"thresholds"`
-	Values      []float64          `json:"values"`
-	Lo          Num                `json:"overload_lo"` // overload bounds
-	Hi          Num                `json:"overload_hi"`
-	TableBytes  int                `json:"table_bytes"`
-	Comparisons int                `json:"comparisons"` // per sample
-	Proof       string             `json:"proof"`
-	Rounds      int                `json:"rounds"`
-	Residual    Num                `json:"residual"`
-	Notes       []string           `json:"notes"`
-	Extra       map[string]float64 `json:"extra,omitempty"`
+	Spec        string    `json:"spec"` // as typed
+	Name        string    `json:"name"` // safe for every file system
+	Family      string    `json:"family"`
+	Levels      int       `json:"levels"`
+	Bits        int       `json:"bits"`
+	MadeOn      string    `json:"made_on"` // "fixed", "a model ...", "the recordings it is tested on", ...
+	Thresholds  []float64 `json:"thresholds"`
+	Values      []float64 `json:"values"`
+	Lo          Num       `json:"overload_lo"` // overload bounds
+	Hi          Num       `json:"overload_hi"`
+	TableBytes  int       `json:"table_bytes"`
+	Comparisons int       `json:"comparisons"` // per sample
+	// IdleLSB is the grid that the idle channel was tried with: the
+	// recordings' coarsest lsb, full scale = 1.0; 0: not tried. The levels are
+	// those of the output for an input of zero, and of one that alternates
+	// between + and - one lsb; null: the output is exactly zero, silent.
+	IdleLSB    float64            `json:"idle_lsb"`
+	IdleZero   Num                `json:"idle_zero_dbov"`
+	IdleOneLSB Num                `json:"idle_one_lsb_dbov"`
+	Proof      string             `json:"proof"`
+	Rounds     int                `json:"rounds"`
+	Residual   Num                `json:"residual"`
+	Notes      []string           `json:"notes"`
+	Extra      map[string]float64 `json:"extra,omitempty"`
 }
 
 // Figures are measured values by name; in JSON they stand beside the other

@@ -23,6 +23,9 @@ func notes(b *book, left []string) (out []string) {
 	if len(b.winner) > 0 {
 		out = append(out, leadMeans)
 	}
+	if len(b.idlers()) > 0 {
+		out = append(out, idleMeans)
+	}
 	if len(left) > 0 {
 		out = append(out, "Left out for want of width: "+strings.Join(left, ", ")+".")
 	}
