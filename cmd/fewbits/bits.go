@@ -109,6 +109,9 @@ func printBits(w io.Writer, run *bench.BitsRun, format string) error {
 	for _, s := range run.Against {
 		fmt.Fprintln(w, s.Sentence())
 	}
+	if run.Method != "" {
+		fmt.Fprintf(w, "95 %%: from the paired differences between recordings; %s\n", run.Method)
+	}
 	for _, s := range run.Warnings {
 		fmt.Fprintf(w, "note: %s\n", s)
 	}

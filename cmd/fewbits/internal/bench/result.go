@@ -6,6 +6,8 @@ import (
 	"encoding/json"
 	"math"
 	"strconv"
+
+	"fewbits/measure"
 )
 
 // Schema names the layout of results.json; it changes when a field changes
@@ -58,6 +60,10 @@ type Results struct {
 	Savings  []Saving  `json:"savings,omitempty"`
 	Refused  []Refusal `json:"refused"`
 	Warnings []string  `json:"warnings"` // about the run as a whole
+
+	// units are what intervals of a figure of some designs come from; nil in
+	// results that were read back.
+	units func(designs []int, figure string) measure.Units
 }
 
 // Settings are the parameters that the figures depend on.
@@ -203,12 +209,16 @@ type Verdict struct {
 
 // Saving is how many bits a sample a design saves against a family at equal
 // leading figure, interpolated over that family's numbers of bits; negative
-// where it costs bits, undefined where the family's designs do not reach it.
+// where it costs bits. There is none where the family's designs do not reach
+// the figure.
 type Saving struct {
-	Design   string `json:"design"`  // spec
-	Against  string `json:"against"` // family: "mu-law", "uniform"
-	Bits     Num    `json:"bits"`
-	Interval [2]Num `json:"interval"` // 95 %, bits
+	Design  string `json:"design"`  // spec
+	Against string `json:"against"` // family: "mu-law", "uniform"
+	Bits    Num    `json:"bits"`
+	// Interval, 95 %, bits; an end is null where it lies beyond the family's
+	// numbers of bits.
+	Interval     [2]Num `json:"interval"`
+	Observations int    `json:"observations"` // clips, talkers or blocks of frames
 }
 
 // Refusal is one recording that was not used, and why.

@@ -10,6 +10,7 @@ import (
 func notes(b *book, left []string) (out []string) {
 	for _, v := range b.Verdicts {
 		out = append(out, v.Sentence)
+		out = append(out, b.savingSentences(v.Winners[b.Leading])...)
 	}
 	if b.LeadingWhy != "" {
 		out = append(out, sentence(b.LeadingWhy))
