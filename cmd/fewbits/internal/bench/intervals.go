@@ -56,7 +56,7 @@ func byBits(designs []Design) [][]int {
 }
 
 // traces gathers what pictures need.
-func (e *engine) traces(r *Results, surveys []*survey, outcomes []*outcome, designs []made) (*Traces, error) {
+func (e *engine) traces(r *Results, surveys []*survey, outcomes []*outcome, sets [][]made) (*Traces, error) {
 	t := &Traces{Schema: "fewbits/traces/1", Clips: []ClipTrace{}, Sweep: []Curve{}, Sine: []Curve{}, Models: []ModelCurve{}, Bounds: []Bound{}}
 	sum := newSpread(len(r.Designs))
 	var all measure.Histogram
@@ -72,7 +72,7 @@ func (e *engine) traces(r *Results, surveys []*survey, outcomes []*outcome, desi
 	if p := newPool(surveys); p.energy > 0 {
 		t.curvesOf(fitModels(&p.in, p.lsb, "in-range"))
 	}
-	return t, e.curves(t, designs, &all)
+	return t, e.curves(t, r.Designs, e.amountsOf(surveys, sets))
 }
 
 // mostTraces is how many clips have curves over time.

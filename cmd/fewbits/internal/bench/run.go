@@ -40,7 +40,7 @@ func Run(ctx context.Context, plan Plan) (*Results, *Traces, error) {
 	if err := e.optimism(r, surveys); err != nil {
 		return nil, nil, err
 	}
-	t, err := e.traces(r, surveys, outcomes, sets[0])
+	t, err := e.traces(r, surveys, outcomes, sets)
 	return r, t, err
 }
 
