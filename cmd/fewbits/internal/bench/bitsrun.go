@@ -161,7 +161,7 @@ func savedBits(r *Results, n, base BitsNeed, figure string, target float64) Save
 	u.Values = append(u.Values[:len(theirs)], interpolate(n.Rates, own.Values, at))
 	reach := measure.MatchBits(floats(base.Rates), u, r.Settings.Seed)
 	out.Bits, out.Interval = Num(reach.Bits-at), [2]Num{Num(reach.Lo - at), Num(reach.Hi - at)}
-	out.Observations, out.method = reach.Observations, reach.Method
+	out.Observations, out.method = reach.Observations, methodWords(r, figure, reach.Method, reach.Observations)
 	return out
 }
 

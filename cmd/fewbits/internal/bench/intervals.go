@@ -29,7 +29,7 @@ func (e *engine) intervals(r *Results, outcomes []*outcome) {
 			p.Interval = [2]Num{Num(cmp.Interval[k][0]), Num(cmp.Interval[k][1])}
 			p.Behind = [2]Num{Num(cmp.Behind[k][0]), Num(cmp.Behind[k][1])}
 		}
-		r.IntervalMethod = cmp.Method
+		r.IntervalMethod = methodWords(r, r.Leading, cmp.Method, cmp.Observations)
 	}
 	if few {
 		r.Warnings = append(r.Warnings, fmt.Sprintf(

@@ -192,9 +192,8 @@ type Pooled struct {
 	Lossless  bool
 	Figures   Figures
 	ClipMeans Figures
-	// Interval is the 95 % interval of the leading figure's mean over clips
-	// (or over blocks), Behind that of the difference from the leader; Lead is
-	// clear, open or shared.
+	// Interval is the 95 % interval of the leading figure, Behind that of the
+	// difference from the leader; Lead is clear, open, shared or behind.
 	Interval, Behind [2]Num
 	Lead             string
 }

@@ -1,6 +1,7 @@
 package bench
 
 import (
+	"fmt"
 	"math"
 	"slices"
 
@@ -103,4 +104,21 @@ func talkers(r *Results) (names []string) {
 		names = append(names, name)
 	}
 	return names
+}
+
+// methodWords tells how an interval of a figure was made and on what.
+func methodWords(r *Results, figure, method string, observations int) string {
+	unit, weighing := "clips", ", each weighing by its frames in range"
+	if talkers(r) != nil {
+		unit = "talkers"
+	}
+	if figure == SNR {
+		weighing = ", each weighing by its energies"
+	} else if len(r.Clips) < measure.FewClips {
+		unit = "blocks of frames"
+	}
+	if observations < 2 {
+		return method
+	}
+	return fmt.Sprintf("%s on %d %s%s", method, observations, unit, weighing)
 }

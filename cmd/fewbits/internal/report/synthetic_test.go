@@ -23,7 +23,7 @@ func synthetic(clips, points int) (*bench.Results, *bench.Traces) {
 		Definitions:    inventedDefinitions,
 		Leading:        bench.OpenSNR,
 		LeadingWhy:     "segsnr_open_db decides: 62 % of the frames of mu-law:8 sit at the 35 dB ceiling of segsnr_db",
-		IntervalMethod: fmt.Sprintf("Student's t on %d clips", clips),
+		IntervalMethod: fmt.Sprintf("Student's t on %d clips, each weighing by its frames in range", clips),
 		Warnings:       []string{"the recordings have more than one sample rate"},
 		Refused:        []bench.Refusal{{File: "harbour/torn.wav", Reason: "byte offset 36: data chunk claims 90,000 bytes, the file holds 12"}},
 	}
@@ -178,7 +178,7 @@ func (g *invention) measure(r *bench.Results) {
 		for name, v := range f {
 			p.ClipMeans[name] = v + 0.1
 		}
-		at := f[bench.OpenSNR] + 0.1
+		at := f[bench.OpenSNR]
 		p.Interval = [2]bench.Num{at - 0.9, at + 0.9}
 		r.Pooled = append(r.Pooled, p)
 		if k, ok := best[d.bits]; !ok || f[bench.OpenSNR] > r.Pooled[k].Figures[bench.OpenSNR] {

@@ -31,7 +31,7 @@ func (b *book) pooledTables() []gridTable {
 func (b *book) designTable(id, caption, note string, figures []string, of func(*bench.Pooled) bench.Figures, lead bool) gridTable {
 	t := gridTable{ID: id, Caption: caption, Note: note, Head: append(words("design"), headCell{Text: "bits"})}
 	if lead {
-		t.Head = append(t.Head, headCell{Text: "95 %", Unit: b.intervalUnit(), Means: "interval of " + b.intervalOf() + " of " + b.Leading},
+		t.Head = append(t.Head, headCell{Text: "95 %", Unit: b.intervalUnit(), Means: "interval of " + b.intervalOf()},
 			headCell{Text: "behind", Unit: "dB", Means: "95 % interval of the difference from the leader"},
 			headCell{Text: "lead", Words: true, Means: leadMeans})
 		t.Note += b.intervalNote()
