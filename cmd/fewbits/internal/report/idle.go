@@ -100,7 +100,7 @@ func idleColumns(b *book) []column {
 	}
 }
 
-const idleMeans = "idle channel: level put out over the frames out of range (pauses), how far above the input's there, share of samples where it changes; then for an input of zero and of +-1 lsb. Shown at each number of bits: the best, the quietest, the loudest, where they differ by more than 1 dB."
+const idleMeans = "idle channel: output over the frames out of range (pauses), dB over the input there, share of samples where it changes; then for an input of zero and of +-1 lsb. Shown: the best, the quietest, the loudest, where more than 1 dB apart."
 
 // idleChannelTable tells every design's idle channel.
 func (b *book) idleChannelTable() gridTable {
