@@ -140,30 +140,32 @@ func (b *book) idleSentences() (out []string) {
 		if w == nil || least == nil {
 			continue
 		}
-		text := fmt.Sprintf("At %s the best, %s", plural(v.Bits, "bit", "bits"), b.idleSentence(w))
+		best := "the best"
 		if w == least {
-			text += ", the quietest"
-		} else {
-			text += ". The quietest, " + b.idleSentence(least)
+			best = "the best and quietest"
+		}
+		text := fmt.Sprintf("At %s %s is %s", plural(v.Bits, "bit", "bits"), best, b.idleSentence(w))
+		if w != least {
+			text += " The quietest is " + b.idleSentence(least)
 		}
 		if w != most {
-			text += ". The loudest, " + b.idleSentence(most)
+			text += " The loudest is " + b.idleSentence(most)
 		}
-		out = append(out, text+".")
+		out = append(out, text)
 	}
 	return out
 }
 
 func (b *book) idleSentence(d *bench.Design) string {
 	if b.pauses(d.Spec) == silent {
-		return d.Spec + ", is silent in the pauses"
+		return d.Spec + ": silent in the pauses."
 	}
-	text := d.Spec + ", puts out " + drawing.Minus(b.pauses(d.Spec)) + " dBov in the pauses"
+	text := d.Spec + ": " + drawing.Minus(b.pauses(d.Spec)) + " dBov in the pauses"
 	if v := b.figure(d.Spec, idleOver); v.Defined() {
 		text += ", " + drawing.Minus(fixed(v, 1)) + " dB over the input there"
 	}
 	if v := b.figure(d.Spec, toggling); v.Defined() {
-		text += ", and changes at " + percent(v) + " % of the samples"
+		text += ", changing at " + percent(v) + " % of the samples"
 	}
-	return text
+	return text + "."
 }

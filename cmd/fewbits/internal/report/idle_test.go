@@ -35,7 +35,7 @@ func TestIdleWords(t *testing.T) {
 		t.Errorf("never tried: %q", got)
 	}
 	said := strings.Join(b.idleSentences(), " ")
-	if !strings.Contains(said, "The quietest, g711-mu, is silent in the pauses. The loudest, uniform:8, puts out \u221264.0 dBov") {
+	if !strings.Contains(said, "The quietest is g711-mu: silent in the pauses. The loudest is uniform:8: \u221264.0 dBov") {
 		t.Errorf("%q", said)
 	}
 	table := between(t, pageOf(t, r, traces), `id="grid-idle"`, "</table>")
