@@ -214,8 +214,9 @@ type Saving struct {
 	Design  string `json:"design"`  // spec
 	Against string `json:"against"` // family: "mu-law", "uniform"
 	Bits    Num    `json:"bits"`
-	// Interval, 95 %, bits; an end is null where it lies beyond the family's
-	// numbers of bits.
+	// Interval, 95 %, bits, each on its own (leads are told for all designs
+	// together); an end is null where it lies beyond the family's numbers of
+	// bits.
 	Interval     [2]Num `json:"interval"`
 	Observations int    `json:"observations"` // clips, talkers or blocks of frames
 }
