@@ -186,17 +186,23 @@ func BenchmarkAddFrame(b *testing.B) {
 	}
 }
 
+// BenchmarkToggles: quiet frames, up to 600 of 32,768; all designs have few
+// cells there (eight lanes), or one has many (four).
 func BenchmarkToggles(b *testing.B) {
-	words := speechLike(480000, 7)
-	const designs = 12
-	k := NewToggles(someDesigns(designs))
-	changes := make([]int64, designs)
-	for b.Loop() {
-		for f := 0; f+160 <= len(words); f += 160 {
-			k.Add(words[f:f+160], changes)
-		}
+	words := within(speechLike(480000, 7), 600)
+	for name, cells := range map[string]int{"eight": 256, "four": 1 << 15} {
+		designs := append(someDesigns(11), uniformLookup(cells, 1))
+		k := NewToggles(designs, 600)
+		changes := make([]int64, len(designs))
+		b.Run(name, func(b *testing.B) {
+			for b.Loop() {
+				for f := 0; f+160 <= len(words); f += 160 {
+					k.Add(words[f:f+160], changes)
+				}
+			}
+			perSecond(b, len(words)*len(designs), "sample-designs/s")
+		})
 	}
-	perSecond(b, len(words)*designs, "sample-designs/s")
 }
 
 func BenchmarkSweepPoint(b *testing.B) {

@@ -142,6 +142,9 @@ type Energies struct {
 	Error  float64 // sum (x-y)^2
 	Cross  float64 // sum x y
 	Output float64 // sum y^2
+	// Changes counts the samples coded otherwise than the one before them in
+	// the block; 0 where the order is not known (a histogram).
+	Changes int64
 }
 
 // Add codes x, adds the global figures (samples, energies, overload, indices)
@@ -149,10 +152,17 @@ type Energies struct {
 func (s *Search) Add(t *Tally, x []float64) Energies {
 	t.grow(len(s.values))
 	var b Energies
-	var granular, overload float64
+	var granular, overload, last float64
+	if len(x) > 0 {
+		last = s.Quantize(x[0])
+	}
 	for _, v := range x {
 		k := s.Index(v)
 		y := s.values[k]
+		if y != last {
+			b.Changes++
+		}
+		last = y
 		e := v - y
 		ee := float64(e * e)
 		b.Signal += float64(v * v)

@@ -40,6 +40,20 @@ func InRange(signal float64, n int, threshold float64) bool {
 	return signal > threshold*float64(n)
 }
 
+// PeakOf is the largest magnitude that a 16-bit word of a frame of n samples
+// out of range can have: 32,768 where the threshold is NaN.
+func PeakOf(threshold float64, n int) int {
+	peak := math.Sqrt(threshold*float64(n)) * (words16 / 2)
+	if !(peak < words16/2) {
+		return words16 / 2
+	}
+	w := int(peak) + 1 // whatever the rounding of the root
+	for InRange(float64(w*w)/(1<<30), n, threshold) {
+		w--
+	}
+	return w
+}
+
 // FloorOf is the least error energy that the open measure counts for a frame
 // of n samples on a grid of lsb: n lsb^2 / 12, that of rounding to the grid.
 func FloorOf(n int, lsb float64) float64 { return float64(n) * lsb * lsb / 12 }

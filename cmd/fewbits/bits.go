@@ -26,7 +26,7 @@ func bitsCommand() *cobra.Command {
 		Short: "say how many bits each family needs for a target",
 		Long: `Measures every family at each of --bits and prints, interpolated, how many bits
 it needs to reach the target, what its table costs there, and how many bits it
-saves against mu-law and uniform, with an interval over clips. The target is
+saves against mu-law and uniform, with its 95 % interval. The target is
 "snr", "segsnr" or "open" and a number of dB; a segmental target is held against
 segsnr_open_db where more than 5 % of the frames sit at the 35 dB ceiling.`,
 		Example: "  fewbits bits --target \"segsnr 25\" recordings/\n  fewbits bits --target \"snr 30\" --bits 4..10 --design mu-law --design lloyd-max,from=data recordings/",
@@ -108,6 +108,9 @@ func printBits(w io.Writer, run *bench.BitsRun, format string) error {
 	fmt.Fprintln(w)
 	for _, s := range run.Against {
 		fmt.Fprintln(w, s.Sentence())
+	}
+	if run.Method != "" {
+		fmt.Fprintf(w, "95 %%: interval of the paired difference; %s\n", run.Method)
 	}
 	for _, s := range run.Warnings {
 		fmt.Fprintf(w, "note: %s\n", s)

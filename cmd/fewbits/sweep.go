@@ -71,6 +71,9 @@ func printSweep(w io.Writer, run *bench.LevelRun, format string) error {
 	fmt.Fprintln(w, "\nsegmental SNR in dB (segsnr_db) against level")
 	levelRows(w, run, wide, func(d bench.LevelDesign) []bench.Num { return d.SegSNRDB }, false)
 	tests(w, run, wide)
+	for _, s := range run.Warnings {
+		fmt.Fprintf(w, "\nnote: %s\n", s)
+	}
 	return nil
 }
 

@@ -30,25 +30,27 @@ type BitsNeed struct {
 	// Bits needed, interpolated between the rates measured (pooled figure);
 	// null where the target is not reached. AtBits is the next rate measured
 	// that reaches it, 0 for none, and the others belong to the design there.
-	Bits        Num       `json:"bits"`
-	AtBits      int       `json:"at_bits"`
-	Spec        string    `json:"spec"`
-	Figure      Num       `json:"figure_db"`
-	TableBytes  int       `json:"table_bytes"`
-	Comparisons int       `json:"comparisons"`
-	Rates       []int     `json:"rates"`
-	Figures     []Num     `json:"figures_db"`
-	perClip     []float64 // bits needed on each clip
+	Bits        Num    `json:"bits"`
+	AtBits      int    `json:"at_bits"`
+	Spec        string `json:"spec"`
+	Figure      Num    `json:"figure_db"`
+	TableBytes  int    `json:"table_bytes"`
+	Comparisons int    `json:"comparisons"`
+	Rates       []int  `json:"rates"`
+	Figures     []Num  `json:"figures_db"`
 }
 
-// SavedBits is how many bits a family saves against another at the target:
-// the mean over clips and its 95 % interval.
+// SavedBits is how many bits a family saves against another at the target,
+// over the units that intervals come from, and its 95 % interval; null where
+// the numbers of bits measured do not reach.
 type SavedBits struct {
 	Family   string `json:"family"`
 	Against  string `json:"against"`
 	Bits     Num    `json:"bits"`
 	Interval [2]Num `json:"interval"`
-	Clips    int    `json:"clips"` // where both reach the target
+	// Observations are the clips, talkers or blocks of frames compared.
+	Observations int `json:"observations"`
+	method       string
 }
 
 // NeedBits runs a comparison over all rates and interpolates. figure is snr,
@@ -59,23 +61,30 @@ func NeedBits(ctx context.Context, plan Plan, figure string, target float64) (*B
 	if err != nil {
 		return nil, err
 	}
-	run := &BitsRun{Schema: "fewbits/bits/1", Target: target, Results: r, Refused: r.Refused, Warnings: r.Warnings, Method: "paired Student's t over clips"}
+	run := &BitsRun{Schema: "fewbits/bits/1", Target: target, Results: r, Refused: r.Refused, Warnings: r.Warnings}
 	run.Figure, run.Why = decide(r, figure, target)
 	for _, name := range familiesOf(r) {
 		run.Families = append(run.Families, needOf(r, name, run.Figure, target))
 	}
-	for _, base := range []string{"mu-law", "uniform"} {
+	run.compare(r)
+	return run, nil
+}
+
+// compare tells what families save against the plain ones; these two are
+// compared once.
+func (run *BitsRun) compare(r *Results) {
+	for k, base := range plainFamilies {
 		i := slices.IndexFunc(run.Families, func(n BitsNeed) bool { return n.Family == base })
 		if i < 0 {
 			continue
 		}
 		for _, n := range run.Families {
-			if n.Family != base {
-				run.Against = append(run.Against, savedBits(n, run.Families[i]))
+			if slices.Index(plainFamilies, n.Family) < k {
+				s := savedBits(r, n, run.Families[i], run.Figure, run.Target)
+				run.Against, run.Method = append(run.Against, s), s.method
 			}
 		}
 	}
-	return run, nil
 }
 
 // decide settles the figure: a segmental target that comes near the ceiling is
@@ -115,13 +124,7 @@ func familiesOf(r *Results) (names []string) {
 // needOf interpolates one family.
 func needOf(r *Results, name, figure string, target float64) BitsNeed {
 	n := BitsNeed{Family: name, Bits: Num(math.NaN()), Figure: Num(math.NaN())}
-	var members []int
-	for i, d := range r.Designs {
-		if familyOf(d.Spec) == name {
-			members = append(members, i)
-		}
-	}
-	slices.SortFunc(members, func(a, b int) int { return r.Designs[a].Bits - r.Designs[b].Bits })
+	members := membersOf(r, name)
 	var pooled []float64
 	for _, i := range members {
 		v := r.Pooled[i].Figures[figure]
@@ -132,13 +135,6 @@ func needOf(r *Results, name, figure string, target float64) BitsNeed {
 		}
 	}
 	n.Bits = Num(crossing(n.Rates, pooled, target))
-	for c := range r.Clips {
-		var own []float64
-		for _, i := range members {
-			own = append(own, float64(r.Results[c*len(r.Designs)+i].Figures[figure]))
-		}
-		n.perClip = append(n.perClip, crossing(n.Rates, own, target))
-	}
 	return n
 }
 
@@ -154,22 +150,31 @@ func crossing(rates []int, figures []float64, target float64) float64 {
 	return math.NaN()
 }
 
-// savedBits compares two families clip by clip.
-func savedBits(n, base BitsNeed) SavedBits {
-	out := SavedBits{Family: n.Family, Against: base.Family, Bits: Num(math.NaN()), Interval: [2]Num{Num(math.NaN()), Num(math.NaN())}}
-	var saved []float64
-	for c := range n.perClip {
-		if d := base.perClip[c] - n.perClip[c]; !math.IsNaN(d) {
-			saved = append(saved, d)
-		}
+// savedBits compares two families where the first reaches the target in the
+// mean over the units.
+func savedBits(r *Results, n, base BitsNeed, figure string, target float64) SavedBits {
+	mine, theirs := membersOf(r, n.Family), membersOf(r, base.Family)
+	u := r.units(slices.Concat(theirs, mine), figure)
+	own := measure.Units{Values: u.Values[len(theirs):], Weights: u.Weights, Groups: u.Groups}
+	at := crossing(n.Rates, measure.Compare(own, r.Settings.Seed).Means, target)
+	out := SavedBits{Family: n.Family, Against: base.Family}
+	u.Values = append(u.Values[:len(theirs)], interpolate(n.Rates, own.Values, at))
+	reach := measure.MatchBits(floats(base.Rates), u, r.Settings.Seed)
+	out.Bits, out.Interval = Num(reach.Bits-at), [2]Num{Num(reach.Lo - at), Num(reach.Hi - at)}
+	out.Observations, out.method = reach.Observations, methodWords(r, figure, reach.Method, reach.Observations)
+	return out
+}
+
+// interpolate is a family's figure on each unit at so many bits.
+func interpolate(rates []int, values [][]float64, bits float64) []float64 {
+	i := 1
+	for i < len(rates)-1 && float64(rates[i]) < bits {
+		i++
 	}
-	if out.Clips = len(saved); out.Clips == 0 {
-		return out
-	}
-	cmp := measure.Compare(measure.Units{Values: [][]float64{saved}}, 1)
-	out.Bits = Num(cmp.Means[0])
-	if out.Clips > 1 {
-		out.Interval = [2]Num{Num(cmp.Interval[0][0]), Num(cmp.Interval[0][1])}
+	out := make([]float64, len(values[0]))
+	for u := range out {
+		a, b := values[i-1][u], values[i][u]
+		out[u] = a + (bits-float64(rates[i-1]))/float64(rates[i]-rates[i-1])*(b-a)
 	}
 	return out
 }
@@ -177,13 +182,7 @@ func savedBits(n, base BitsNeed) SavedBits {
 // Sentence says what a saving amounts to.
 func (s SavedBits) Sentence() string {
 	if !s.Bits.Defined() {
-		return fmt.Sprintf("%s against %s: no clip on which both reach the target", s.Family, s.Against)
+		return fmt.Sprintf("%s against %s: cannot be said, the bits measured do not reach", s.Family, s.Against)
 	}
-	verb := "saves"
-	v := float64(s.Bits)
-	if v < 0 {
-		verb, v = "costs", -v
-	}
-	return fmt.Sprintf("%s %s %.2f bits against %s (95 %%: %+.2f to %+.2f saved, %d clips)",
-		s.Family, verb, v, s.Against, float64(s.Interval[0]), float64(s.Interval[1]), s.Clips)
+	return fmt.Sprintf("%s %s against %s (%s)", s.Family, amount(s.Bits), s.Against, between(s.Interval, s.Observations, 2))
 }

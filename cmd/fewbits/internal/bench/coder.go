@@ -10,11 +10,12 @@ type coder struct {
 	designs []made
 	lookups []measure.Lookup
 	kernel  *measure.Kernel   // for 16-bit samples
+	toggles *measure.Toggles  // for their quiet frames
 	search  []*measure.Search // for all others
 }
 
-func newCoder(designs []made, words bool) *coder {
-	c := &coder{designs: designs}
+func newCoder(s *survey, designs []made) *coder {
+	c, words := &coder{designs: designs}, s.rec.Words()
 	for _, d := range designs {
 		if words {
 			c.lookups = append(c.lookups, measure.Lookup(d.grid))
@@ -25,8 +26,17 @@ func newCoder(designs []made, words bool) *coder {
 	}
 	if words {
 		c.kernel = measure.NewKernel(c.lookups)
+		c.toggles = measure.NewToggles(c.lookups, s.quietPeak())
 	}
 	return c
+}
+
+// quietPeak bounds the words of all frames out of range.
+func (s *survey) quietPeak() (peak int) {
+	for _, threshold := range s.inRange {
+		peak = max(peak, measure.PeakOf(threshold, s.frame))
+	}
+	return peak
 }
 
 // blocksPerClip is how many stretches a clip is cut into where intervals must
@@ -65,6 +75,7 @@ func (c *coder) code(s *survey, p planes, at chunk, set Settings) coded {
 		signal, errs := out.signal[ch*n:(ch+1)*n], out.errs[ch*n*d:(ch+1)*n*d]
 		if p.words != nil {
 			c.kernel.Frames(p.words[ch], s.frame, signal, errs)
+			c.toggling(s, p.words[ch], ch, out.blocks[0], signal)
 		} else {
 			c.frames(s, p.reals[ch], ch, out.blocks[0], signal, errs)
 		}
@@ -89,6 +100,21 @@ func (c *coder) count(s *survey, ch int, at chunk, set Settings, out *coded, sig
 	}
 }
 
+// toggling counts the changes of output in the quiet frames of a channel.
+func (c *coder) toggling(s *survey, words []int16, ch int, tallies []measure.Tally, signal []float64) {
+	changes := make([]int64, len(c.designs))
+	for f, sig := range signal {
+		if measure.InRange(sig, s.frame, s.inRange[ch]) {
+			continue
+		}
+		clear(changes)
+		c.toggles.Add(words[f*s.frame:(f+1)*s.frame], changes)
+		for i, n := range changes {
+			tallies[i].AddToggles(n, s.frame)
+		}
+	}
+}
+
 // frames is the general path: every sample of every design is searched. Its
 // global figures go to the chunk's first block.
 func (c *coder) frames(s *survey, x []float64, ch int, tallies []measure.Tally, signal, errs []float64) {
@@ -102,6 +128,7 @@ func (c *coder) frames(s *survey, x []float64, ch int, tallies []measure.Tally, 
 				tallies[i].AddInRange(e)
 			} else {
 				tallies[i].AddQuiet(e, int64(n))
+				tallies[i].AddToggles(e.Changes, n)
 			}
 		}
 	}

@@ -24,6 +24,7 @@ func (e *engine) collect(r *Results, surveys []*survey, outcomes []*outcome) {
 	r.Leading, r.LeadingWhy = leading(r.Pooled, r.Settings.LimitsDB[1])
 	e.intervals(r, outcomes)
 	r.Verdicts = verdicts(r)
+	r.Savings = savings(r)
 	e.footnotes(r)
 }
 

@@ -52,7 +52,7 @@ func plainFigures(x [][]float64, c Clip, d Design, out bool) map[string]float64 
 	n := int(math.Floor(float64(c.RateHz)*0.02 + 0.5))
 	var total, gran, over, overloaded, samples float64
 	var used, outOfRange, silent, upper, lower, floored float64
-	var quietS, quietE, inS, cross, idle, idleN float64
+	var quietS, quietE, inS, cross, idle, idleN, quietIn, toggled, steps float64
 	counts := map[int]float64{}
 	for _, plane := range x {
 		threshold := plainActive(plane, float64(c.RateHz)) - 30
@@ -76,7 +76,13 @@ func plainFigures(x [][]float64, c Clip, d Design, out bool) map[string]float64 
 			}
 			in := s > 0 && 10*math.Log10(s/float64(n)) > threshold
 			if !in {
-				idle, idleN = idle+yy, idleN+float64(n)
+				idle, idleN, quietIn = idle+yy, idleN+float64(n), quietIn+s
+				for i := 1; i < n; i++ {
+					steps++
+					if d.Values[cell(plane[i], d, out)] != d.Values[cell(plane[i-1], d, out)] {
+						toggled++
+					}
+				}
 			}
 			switch db := 10 * math.Log10(s/e); {
 			case s == 0:
@@ -107,6 +113,7 @@ func plainFigures(x [][]float64, c Clip, d Design, out bool) map[string]float64 
 		"frames_used": used, "frames_out_of_range": outOfRange, "frames_left_out": silent,
 		"at_upper_limit": upper / used, "at_lower_limit": lower / used, "floored": floored / used,
 		"quiet_snr_db": 10 * math.Log10(quietS/quietE), "idle_dbov": 10 * math.Log10(idle/idleN), "match_b": cross / inS,
+		"idle_gain_db": 10 * math.Log10(idle/quietIn), "idle_toggling": toggled / steps,
 	}
 }
 

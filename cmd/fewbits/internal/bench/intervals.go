@@ -12,19 +12,24 @@ import (
 // differences from the leader are real.
 func (e *engine) intervals(r *Results, outcomes []*outcome) {
 	few := len(outcomes) < measure.FewClips
-	for _, members := range byBits(r.Designs) {
-		u := clipUnits(r, members)
-		if few {
-			u = blockUnits(r, outcomes, members)
+	r.units = func(members []int, figure string) measure.Units {
+		switch {
+		case figure == SNR:
+			return energyUnits(r, members)
+		case few:
+			return blockUnits(outcomes, members, figure)
 		}
-		cmp := measure.Compare(u, e.plan.Seed)
+		return clipUnits(r, members, figure)
+	}
+	for _, members := range byBits(r.Designs) {
+		cmp := measure.Compare(r.units(members, r.Leading), e.plan.Seed)
 		for k, i := range members {
 			p := &r.Pooled[i]
 			p.Lead = cmp.Lead[k]
 			p.Interval = [2]Num{Num(cmp.Interval[k][0]), Num(cmp.Interval[k][1])}
 			p.Behind = [2]Num{Num(cmp.Behind[k][0]), Num(cmp.Behind[k][1])}
 		}
-		r.IntervalMethod = cmp.Method
+		r.IntervalMethod = methodWords(r, r.Leading, cmp.Method, cmp.Observations)
 	}
 	if few {
 		r.Warnings = append(r.Warnings, fmt.Sprintf(
@@ -50,55 +55,8 @@ func byBits(designs []Design) [][]int {
 	return out
 }
 
-// clipUnits takes each clip's figure as one observation, or each talker's,
-// weighted by its frames, so that the leader is the winner of the table.
-func clipUnits(r *Results, members []int) (u measure.Units) {
-	for _, i := range members {
-		var row []float64
-		for c := range r.Clips {
-			row = append(row, float64(r.Results[c*len(r.Designs)+i].Figures[r.Leading]))
-		}
-		u.Values = append(u.Values, row)
-	}
-	for _, c := range r.Clips {
-		u.Weights = append(u.Weights, float64(c.FramesInRange))
-	}
-	if slices.ContainsFunc(r.Clips, func(c Clip) bool { return c.Talker != "" }) {
-		for _, c := range r.Clips {
-			name := c.Talker
-			if name == "" {
-				name = c.File
-			}
-			u.Groups = append(u.Groups, name)
-		}
-	}
-	return u
-}
-
-// blockUnits takes each block of each clip as one, weighted by its frames.
-func blockUnits(r *Results, outcomes []*outcome, members []int) (u measure.Units) {
-	seg := measure.SegInRange
-	if r.Leading == OpenSNR {
-		seg = measure.SegOpen
-	}
-	for _, i := range members {
-		var row []float64
-		u.Weights = nil
-		for _, o := range outcomes {
-			for _, b := range o.blocks {
-				if n := b[i].Segmental[seg].Frames; n > 0 {
-					row = append(row, b[i].Segmental[seg].Mean())
-					u.Weights = append(u.Weights, float64(n))
-				}
-			}
-		}
-		u.Values = append(u.Values, row)
-	}
-	return u
-}
-
 // traces gathers what pictures need.
-func (e *engine) traces(r *Results, surveys []*survey, outcomes []*outcome, designs []made) (*Traces, error) {
+func (e *engine) traces(r *Results, surveys []*survey, outcomes []*outcome, sets [][]made) (*Traces, error) {
 	t := &Traces{Schema: "fewbits/traces/1", Clips: []ClipTrace{}, Sweep: []Curve{}, Sine: []Curve{}, Models: []ModelCurve{}, Bounds: []Bound{}}
 	sum := newSpread(len(r.Designs))
 	var all measure.Histogram
@@ -114,7 +72,7 @@ func (e *engine) traces(r *Results, surveys []*survey, outcomes []*outcome, desi
 	if p := newPool(surveys); p.energy > 0 {
 		t.curvesOf(fitModels(&p.in, p.lsb, "in-range"))
 	}
-	return t, e.curves(t, designs, &all)
+	return t, e.curves(t, r.Designs, e.amountsOf(surveys, sets))
 }
 
 // mostTraces is how many clips have curves over time.

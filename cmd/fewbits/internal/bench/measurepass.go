@@ -14,7 +14,7 @@ type outcome struct {
 
 // measure codes a clip with every design, measures it and writes the audio.
 func (e *engine) measure(s *survey, designs []made) (*outcome, error) {
-	c := newCoder(designs, s.rec.Words())
+	c := newCoder(s, designs)
 	out := newOutcome(len(designs))
 	tr := newTracer(s, designs)
 	var sound *audio

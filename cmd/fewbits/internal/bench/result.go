@@ -6,6 +6,8 @@ import (
 	"encoding/json"
 	"math"
 	"strconv"
+
+	"fewbits/measure"
 )
 
 // Schema names the layout of results.json; it changes when a field changes
@@ -58,6 +60,10 @@ type Results struct {
 	Savings  []Saving  `json:"savings,omitempty"`
 	Refused  []Refusal `json:"refused"`
 	Warnings []string  `json:"warnings"` // about the run as a whole
+
+	// units are what intervals of a figure of some designs come from; nil in
+	// results that were read back.
+	units func(designs []int, figure string) measure.Units
 }
 
 // Settings are the parameters that the figures depend on.
@@ -140,23 +146,30 @@ type Fit struct {
 
 // Design is one staircase of the comparison.
 type Design struct {
-	Spec        string             `json:"spec"` // as typed
-	Name        string             `json:"name"` // safe for every file system
-	Family      string             `json:"family"`
-	Levels      int                `json:"levels"`
-	Bits        int                `json:"bits"`
-	MadeOn      string             `json:"made_on"` // "fixed", "a model ...", "the recordings it is tested on", ...
-	Thresholds  []float64          `json:"thresholds"`
-	Values      []float64          `json:"values"`
-	Lo          Num                `json:"overload_lo"` // overload bounds
-	Hi          Num                `json:"overload_hi"`
-	TableBytes  int                `json:"table_bytes"`
-	Comparisons int                `json:"comparisons"` // per sample
-	Proof       string             `json:"proof"`
-	Rounds      int                `json:"rounds"`
-	Residual    Num                `json:"residual"`
-	Notes       []string           `json:"notes"`
-	Extra       map[string]float64 `json:"extra,omitempty"`
+	Spec        string    `json:"spec"` // as typed
+	Name        string    `json:"name"` // safe for every file system
+	Family      string    `json:"family"`
+	Levels      int       `json:"levels"`
+	Bits        int       `json:"bits"`
+	MadeOn      string    `json:"made_on"` // "fixed", "a model ...", "the recordings it is tested on", ...
+	Thresholds  []float64 `json:"thresholds"`
+	Values      []float64 `json:"values"`
+	Lo          Num       `json:"overload_lo"` // overload bounds
+	Hi          Num       `json:"overload_hi"`
+	TableBytes  int       `json:"table_bytes"`
+	Comparisons int       `json:"comparisons"` // per sample
+	// IdleLSB is the grid that the idle channel was tried with: the
+	// recordings' coarsest lsb, full scale = 1.0; 0: not tried. The levels are
+	// those of the output for an input of zero, and of one that alternates
+	// between + and - one lsb; null: the output is exactly zero, silent.
+	IdleLSB    float64            `json:"idle_lsb"`
+	IdleZero   Num                `json:"idle_zero_dbov"`
+	IdleOneLSB Num                `json:"idle_one_lsb_dbov"`
+	Proof      string             `json:"proof"`
+	Rounds     int                `json:"rounds"`
+	Residual   Num                `json:"residual"`
+	Notes      []string           `json:"notes"`
+	Extra      map[string]float64 `json:"extra,omitempty"`
 }
 
 // Figures are measured values by name; in JSON they stand beside the other
@@ -179,9 +192,8 @@ type Pooled struct {
 	Lossless  bool
 	Figures   Figures
 	ClipMeans Figures
-	// Interval is the 95 % interval of the leading figure's mean over clips
-	// (or over blocks), Behind that of the difference from the leader; Lead is
-	// clear, open or shared.
+	// Interval is the 95 % interval of the leading figure, Behind that of the
+	// difference from the leader; Lead is clear, open, shared or behind.
 	Interval, Behind [2]Num
 	Lead             string
 }
@@ -196,12 +208,17 @@ type Verdict struct {
 
 // Saving is how many bits a sample a design saves against a family at equal
 // leading figure, interpolated over that family's numbers of bits; negative
-// where it costs bits, undefined where the family's designs do not reach it.
+// where it costs bits. There is none where the family's designs do not reach
+// the figure.
 type Saving struct {
-	Design   string `json:"design"`  // spec
-	Against  string `json:"against"` // family: "mu-law", "uniform"
-	Bits     Num    `json:"bits"`
-	Interval [2]Num `json:"interval"` // 95 %, bits
+	Design  string `json:"design"`  // spec
+	Against string `json:"against"` // family: "mu-law", "uniform"
+	Bits    Num    `json:"bits"`
+	// Interval, 95 %, bits, each on its own (leads are told for all designs
+	// together); an end is null where it lies beyond the family's numbers of
+	// bits.
+	Interval     [2]Num `json:"interval"`
+	Observations int    `json:"observations"` // clips, talkers or blocks of frames
 }
 
 // Refusal is one recording that was not used, and why.

@@ -40,7 +40,7 @@ func Run(ctx context.Context, plan Plan) (*Results, *Traces, error) {
 	if err := e.optimism(r, surveys); err != nil {
 		return nil, nil, err
 	}
-	t, err := e.traces(r, surveys, outcomes, sets[0])
+	t, err := e.traces(r, surveys, outcomes, sets)
 	return r, t, err
 }
 
@@ -72,6 +72,7 @@ func (e *engine) results(surveys []*survey, refused []Refusal) *Results {
 	for _, m := range measure.Register {
 		r.Definitions = append(r.Definitions, Definition{Name: m.Name, Unit: m.Unit, Means: m.Means})
 	}
+	r.Definitions = append(r.Definitions, idleDefinitions...)
 	for _, s := range surveys {
 		r.Clips = append(r.Clips, s.clip)
 	}
@@ -99,8 +100,9 @@ func (e *engine) designs(r *Results, surveys []*survey) ([][]made, error) {
 	if err != nil {
 		return nil, err
 	}
-	for _, d := range all {
-		r.Designs = append(r.Designs, d.Design)
+	for i := range all {
+		all[i].tryIdle(surveys)
+		r.Designs = append(r.Designs, all[i].Design)
 	}
 	e.warnAboutTraining(r)
 	sets := make([][]made, len(surveys))

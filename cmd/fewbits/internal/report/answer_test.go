@@ -9,39 +9,45 @@ import (
 	"fewbits/cmd/fewbits/internal/bench"
 )
 
-// TestSaving against numbers worked by hand: uniform has 1.2, 13.1 and 25.2 dB
-// at 4, 6 and 8 bits, so the 12.1 dB of mu-law:4 lie at 4 + 2 (12.1 - 1.2) /
-// (13.1 - 1.2) = 5.832 bits.
-func TestSaving(t *testing.T) {
+// TestSavingSentences: the run's own savings with their intervals, and no
+// number where it has none.
+func TestSavingSentences(t *testing.T) {
 	r, _ := synthetic(5, 5)
+	r.Savings = []bench.Saving{
+		{Design: "mu-law:4", Against: "uniform", Bits: 1.7, Interval: [2]bench.Num{1.2, 2.1}, Observations: 5},
+		{Design: "mu-law:6", Against: "uniform", Bits: 1.9, Interval: [2]bench.Num{0.6, bench.Num(nan)}, Observations: 5},
+	}
 	b := open(r)
-	s, ok := b.saving("mu-law:4", "uniform")
-	if want := 2 * (12.1 - 1.2) / (13.1 - 1.2); !ok || math.Abs(float64(s.Bits)-want) > 1e-12 {
-		t.Errorf("%v, want %v", s.Bits, want)
+	for winner, want := range map[string]string{
+		"mu-law:4": "For the same segsnr_open_db, mu-law:4 saves 1.70 bits a sample against uniform (95 %: +1.20 to +2.10).",
+		"mu-law:6": "For the same segsnr_open_db, mu-law:6 saves 1.90 bits a sample against uniform (95 %: +0.60 or more).",
+		"mu-law:8": "",
+		"":         "",
+	} {
+		if got := strings.Join(b.savingSentences(winner), " "); got != want {
+			t.Errorf("%q, want %q", got, want)
+		}
 	}
-	if _, ok := b.saving("mu-law:8", "uniform"); ok {
-		t.Error("36.4 dB is more than uniform reaches")
-	}
-	if most, ok := b.outOfReach("mu-law:6", "uniform"); ok {
-		t.Errorf("uniform reaches 24.3 dB with %d bits", most)
-	}
-	r.Savings = []bench.Saving{{Design: "mu-law:4", Against: "uniform", Bits: 1.7, Interval: [2]bench.Num{1.2, 2.1}}}
-	if got := b.savingSentences("mu-law:4"); len(got) != 1 || !strings.Contains(got[0], "1.7 bits a sample fewer than uniform (95 %: 1.2 to 2.1)") {
-		t.Errorf("%q", got)
+	var out strings.Builder
+	if err := Terminal(&out, r, 0, false); err != nil || strings.Count(out.String(), "For the same segsnr_open_db") != 2 {
+		t.Errorf("on the terminal: %v\n%s", err, out.String())
 	}
 }
 
-// TestOutOfReach: where no design of more bits gets there, the page says so.
+// TestOutOfReach: where no design of more bits gets there, the page says so and
+// names no saving.
 func TestOutOfReach(t *testing.T) {
 	r, _ := synthetic(5, 5)
+	if _, ok := open(r).outOfReach("mu-law:6", "uniform"); ok {
+		t.Error("uniform reaches 24.3 dB with 8 bits")
+	}
 	for i := range r.Pooled {
 		if r.Pooled[i].Design == "mu-law:6" {
 			r.Pooled[i].Figures[openSNR] = 26
 		}
 	}
 	got := open(r).savingSentences("mu-law:6")
-	want := "No uniform design here reaches its segsnr_open_db, not even 8 bits: it saves more than 2 bits."
-	if !slices.Contains(got, want) {
+	if want := "No uniform design here reaches its segsnr_open_db, not even 8 bits."; !slices.Equal(got, []string{want}) {
 		t.Errorf("%q", got)
 	}
 }

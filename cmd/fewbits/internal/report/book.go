@@ -69,7 +69,7 @@ func (b *book) lossless(spec string) bool {
 	return p != nil && p.Lossless
 }
 
-// interval is the 95 % interval of the leading figure's mean over clips.
+// interval is the 95 % interval of the leading figure.
 func (b *book) interval(spec string) [2]bench.Num {
 	if p := b.pooled[spec]; p != nil {
 		return p.Interval
@@ -88,9 +88,9 @@ const hereOnly = "these recordings only"
 // intervalOf is what the 95 % intervals are about.
 func (b *book) intervalOf() string {
 	if b.hereOnly() {
-		return "the mean over these recordings, from blocks of their frames"
+		return b.Leading + " over all frames in range of these recordings"
 	}
-	return "the mean over clips"
+	return b.Leading + " over all frames in range"
 }
 
 // ranked lists the designs by bits, then by the leading figure, best first.

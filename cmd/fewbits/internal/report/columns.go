@@ -70,9 +70,9 @@ func lead(b *book, d *bench.Design) string {
 
 // fit drops columns until the table keeps to width; it returns the heads of
 // those left out.
-func fit(b *book, cols []column, width int) (kept []column, left []string) {
+func fit(cols []column, designs []*bench.Design, width int) (kept []column, left []string) {
 	kept = cols
-	for width > 0 && tableWidth(b, kept) > width {
+	for width > 0 && tableWidth(kept, designs) > width {
 		worst := 0
 		for i, c := range kept {
 			if c.drop > kept[worst].drop {
@@ -88,12 +88,12 @@ func fit(b *book, cols []column, width int) (kept []column, left []string) {
 	return kept, left
 }
 
-func tableWidth(b *book, cols []column) int {
+func tableWidth(cols []column, designs []*bench.Design) int {
 	total := 2 * len(cols)
 	for _, c := range cols {
 		w := text.LongestLineLen(c.head)
-		for i := range b.Designs {
-			w = max(w, text.StringWidthWithoutEscSequences(c.cell(&b.Designs[i])))
+		for _, d := range designs {
+			w = max(w, text.StringWidthWithoutEscSequences(c.cell(d)))
 		}
 		total += w
 	}

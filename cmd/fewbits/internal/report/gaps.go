@@ -9,8 +9,8 @@ import (
 	"fewbits/cmd/fewbits/internal/report/drawing"
 )
 
-// gaps draws how far the designs of so many bits are behind the one of the
-// best mean, with the intervals of the differences; nil where there are none.
+// gaps draws how far the designs of so many bits are behind the best,
+// with the intervals of the differences; nil where there are none.
 func gaps(b *book, bits int) *plate {
 	var of []*bench.Design
 	reach := [2]float64{0, 1}
@@ -38,20 +38,20 @@ func gaps(b *book, bits int) *plate {
 		F: f, X: drawing.Scale{Min: math.Floor(reach[0]), Max: math.Ceil(reach[1]), From: 16, To: width - 14},
 		Y: drawing.Scale{Max: 1, From: h - 44, To: 4},
 	}
-	p.Grid(drawing.Ticks(p.X.Min, p.X.Max, 9), nil, "behind the best mean, dB of "+b.Leading, "")
+	p.Grid(drawing.Ticks(p.X.Min, p.X.Max, 9), nil, "behind the best, dB of "+b.Leading, "")
 	var said []string
 	for i, d := range of {
 		said = append(said, gap(b, p, d, 12+row*float64(i)))
 	}
 	f.Text = strings.Join(said, "; ") + "."
 	return &plate{Figure: f, Turn: bitsTurn(bits), Caption: "Bars: 95 % intervals of the differences, taken together; the mark is their middle. " +
-		"A bar that reaches the upright strokes at 0 cannot be told from the best. " + capital(b.intervalOf()) + " is compared; " + b.Leading + " pooled over all frames may name another winner where designs are that close."}
+		"A bar that reaches the upright strokes at 0 cannot be told from the best. Compared is " + b.intervalOf() + "."}
 }
 
 // gap draws one design's row at y and says it.
 func gap(b *book, p drawing.Panel, d *bench.Design, y float64) string {
 	v := b.pooled[d.Spec].Behind
-	words := "best mean"
+	words := "best"
 	if v[0].Defined() && v[1].Defined() {
 		words = drawing.Minus(fixed(v[0], 1)) + " to " + drawing.Minus(fixed(v[1], 1)) + " dB"
 		if v[0] <= 0 {
@@ -63,7 +63,7 @@ func gap(b *book, p drawing.Panel, d *bench.Design, y float64) string {
 	zero := p.X.At(0)
 	p.F.Line(drawing.Ink{Role: "ink", Width: 1.6}, drawing.Point{X: zero, Y: mid - 7}, drawing.Point{X: zero, Y: mid + 8})
 	at := 0.0
-	if words != "best mean" {
+	if words != "best" {
 		at = float64(v[0]+v[1]) / 2
 		p.F.Line(drawing.Ink{Role: drawing.Role(n), Width: 2.4},
 			drawing.Point{X: p.X.At(float64(v[0])), Y: mid}, drawing.Point{X: p.X.At(float64(v[1])), Y: mid})

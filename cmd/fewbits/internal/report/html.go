@@ -69,6 +69,8 @@ type content struct {
 	Audio                                   bool
 	FirstAudio                              string
 	Models, Classes, Matrix, Fits, Findings *gridTable
+	Idle                                    *gridTable
+	IdleSays                                []string
 	Pooled                                  []gridTable
 	Designs, Clips                          gridTable
 	Figures                                 []string
@@ -89,7 +91,8 @@ func compose(b *book, t *bench.Traces, o Options) (*content, error) {
 		Figures: measured(b.Results), Command: commandLine(b.Command), Checksums: checksums(b), Settings: settings(b),
 	}
 	p.Models = unlessEmpty(modelsTable(t))
-	p.Classes = unlessEmpty(idleTable(b, t))
+	p.Classes = unlessEmpty(classesTable(b, t))
+	p.Idle, p.IdleSays = unlessEmpty(b.idleChannelTable()), b.idleSentences()
 	p.Fits = unlessEmpty(b.fitsTable())
 	p.Findings = unlessEmpty(b.findingsTable())
 	if len(b.Designs) > 0 {
@@ -142,7 +145,8 @@ func (p *content) parts() []section {
 		{section{"answer", "answer"}, true}, {section{"lead", "lead"}, p.Sets["gaps"] != nil}, {section{"tradeoff", "bits"}, p.Sets["tradeoff"] != nil},
 		{section{"level", "level"}, p.HasLevels()}, {section{"signal", "amplitudes"}, p.Sets["signal"] != nil},
 		{section{"stairs", "staircases"}, p.Sets["stairs"] != nil}, {section{"time", "over time"}, p.Time != nil},
-		{section{"frames", "frames"}, p.Sets["spread"] != nil}, {section{"numbers", "numbers"}, true},
+		{section{"frames", "frames"}, p.Sets["spread"] != nil}, {section{"idle", "idle"}, p.Idle != nil},
+		{section{"numbers", "numbers"}, true},
 		{section{"repeat", "repeat"}, true},
 	}
 	var out []section

@@ -3,6 +3,7 @@ package report
 import (
 	"encoding/csv"
 	"encoding/json"
+	"fmt"
 	"io"
 	"slices"
 	"strconv"
@@ -30,21 +31,27 @@ func indented(w io.Writer, v any) error {
 }
 
 // Summary writes r as CSV: a line per clip and design, every measured figure a
-// column, in the order of r.Definitions. Undefined figures are empty.
+// column, in the order of r.Definitions, then the design's idle channel.
+// Undefined figures are empty.
 func Summary(w io.Writer, r *bench.Results) error {
 	figures := measured(r)
-	bits := map[string]int{}
-	for _, d := range r.Designs {
-		bits[d.Spec] = d.Bits
-	}
+	designs := open(r).design
 	out := csv.NewWriter(w)
-	out.Write(append([]string{"clip", "design", "bits", "lossless"}, figures...))
+	out.Write(append(append([]string{"clip", "design", "bits", "lossless"}, figures...), "idle_zero_dbov", "idle_one_lsb_dbov"))
 	for _, x := range r.Results {
-		line := []string{x.Clip, x.Design, strconv.Itoa(bits[x.Design]), strconv.FormatBool(x.Lossless)}
+		d := designs[x.Design]
+		if d == nil {
+			return fmt.Errorf("results: %q is coded with %q, which is not among the designs", x.Clip, x.Design)
+		}
+		line := []string{x.Clip, x.Design, strconv.Itoa(d.Bits), strconv.FormatBool(x.Lossless)}
 		for _, name := range figures {
 			line = append(line, exact(x.Figures, name))
 		}
-		out.Write(line)
+		tried := bench.Figures{}
+		if d.IdleLSB > 0 {
+			tried["zero"], tried["lsb"] = d.IdleZero, d.IdleOneLSB
+		}
+		out.Write(append(line, exact(tried, "zero"), exact(tried, "lsb")))
 	}
 	out.Flush()
 	return out.Error()

@@ -10,6 +10,7 @@ import (
 func notes(b *book, left []string) (out []string) {
 	for _, v := range b.Verdicts {
 		out = append(out, v.Sentence)
+		out = append(out, b.savingSentences(v.Winners[b.Leading])...)
 	}
 	if b.LeadingWhy != "" {
 		out = append(out, sentence(b.LeadingWhy))
@@ -22,6 +23,9 @@ func notes(b *book, left []string) (out []string) {
 	}
 	if len(b.winner) > 0 {
 		out = append(out, leadMeans)
+	}
+	if len(b.idlers()) > 0 {
+		out = append(out, idleMeans)
 	}
 	if len(left) > 0 {
 		out = append(out, "Left out for want of width: "+strings.Join(left, ", ")+".")

@@ -23,7 +23,7 @@ func synthetic(clips, points int) (*bench.Results, *bench.Traces) {
 		Definitions:    inventedDefinitions,
 		Leading:        bench.OpenSNR,
 		LeadingWhy:     "segsnr_open_db decides: 62 % of the frames of mu-law:8 sit at the 35 dB ceiling of segsnr_db",
-		IntervalMethod: fmt.Sprintf("Student's t on %d clips", clips),
+		IntervalMethod: fmt.Sprintf("Student's t on %d clips, each weighing by its frames in range", clips),
 		Warnings:       []string{"the recordings have more than one sample rate"},
 		Refused:        []bench.Refusal{{File: "harbour/torn.wav", Reason: "byte offset 36: data chunk claims 90,000 bytes, the file holds 12"}},
 	}
@@ -62,6 +62,8 @@ var inventedDefinitions = []bench.Definition{
 	{Name: "entropy_bits", Unit: "bits/sample", Means: "first-order empirical entropy of the indices"},
 	{Name: "quiet_snr_db", Unit: "dB", Means: "SNR over the frames out of range"},
 	{Name: "idle_dbov", Unit: "dBov", Means: "level of the output over the frames out of range"},
+	{Name: "idle_gain_db", Unit: "dB", Means: "output level over the frames out of range less the input's there"},
+	{Name: "idle_toggling", Unit: "share", Means: "share of samples whose output differs from the one before, there"},
 	{Name: "match_gain", Unit: "", Means: "gain that brings the output to the input"},
 }
 
@@ -95,6 +97,10 @@ func (d inventedDesign) design() bench.Design {
 	out := bench.Design{
 		Spec: d.spec, Name: safe(d.spec), Family: d.family, Levels: n, Bits: d.bits, MadeOn: "fixed",
 		Lo: bench.Num(-d.peak), Hi: bench.Num(d.peak), Residual: bench.Num(math.NaN()), Notes: []string{},
+	}
+	out.IdleLSB, out.IdleZero, out.IdleOneLSB = 1.0/32768, bench.Num(-58-d.quiet/2), bench.Num(-58-d.quiet/2)
+	if d.family == "g711-mu" {
+		out.IdleZero, out.IdleOneLSB = bench.Num(nan), bench.Num(nan)
 	}
 	if d.fitted {
 		out.MadeOn, out.Proof = "a gamma model at the recordings' rms, the recordings it is tested on", "gap to the bound"
@@ -172,7 +178,7 @@ func (g *invention) measure(r *bench.Results) {
 		for name, v := range f {
 			p.ClipMeans[name] = v + 0.1
 		}
-		at := f[bench.OpenSNR] + 0.1
+		at := f[bench.OpenSNR]
 		p.Interval = [2]bench.Num{at - 0.9, at + 0.9}
 		r.Pooled = append(r.Pooled, p)
 		if k, ok := best[d.bits]; !ok || f[bench.OpenSNR] > r.Pooled[k].Figures[bench.OpenSNR] {
@@ -234,6 +240,7 @@ func (g *invention) figures(d inventedDesign, spread float64) bench.Figures {
 		"segsnr_all_db": limited - 3, "segsnr_open_db": open, "frames_used": 160, "at_upper_limit": ceil,
 		"overload_fraction": bench.Num(d.over), "entropy_bits": jitter2(d.entropy, spread/20, g.rng),
 		"quiet_snr_db": jitter(d.quiet), "idle_dbov": bench.Num(-61 - d.quiet/4),
+		"idle_gain_db": bench.Num(5 - d.quiet/4), "idle_toggling": bench.Num(0.06 * d.entropy),
 		"frames_out_of_range": 40, "frames_left_out": 3, "at_lower_limit": bench.Num(0.01 * g.rng.Float64()),
 		"all_at_upper_limit": ceil * 0.9, "all_at_lower_limit": bench.Num(0.02 * g.rng.Float64()),
 		"open_at_upper_limit": 0, "open_at_lower_limit": bench.Num(0.01 * g.rng.Float64()),

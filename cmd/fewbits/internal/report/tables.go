@@ -31,7 +31,7 @@ func (b *book) pooledTables() []gridTable {
 func (b *book) designTable(id, caption, note string, figures []string, of func(*bench.Pooled) bench.Figures, lead bool) gridTable {
 	t := gridTable{ID: id, Caption: caption, Note: note, Head: append(words("design"), headCell{Text: "bits"})}
 	if lead {
-		t.Head = append(t.Head, headCell{Text: "95 %", Unit: b.intervalUnit(), Means: "interval of " + b.intervalOf() + " of " + b.Leading},
+		t.Head = append(t.Head, headCell{Text: "95 %", Unit: b.intervalUnit(), Means: "interval of " + b.intervalOf()},
 			headCell{Text: "behind", Unit: "dB", Means: "95 % interval of the difference from the leader"},
 			headCell{Text: "lead", Words: true, Means: leadMeans})
 		t.Note += b.intervalNote()
@@ -107,12 +107,12 @@ func (b *book) designsTable() gridTable {
 	return t
 }
 
-// idleTable is the idle noise and the frame SNR by level class.
-func idleTable(b *book, t *bench.Traces) gridTable {
-	g := gridTable{ID: "classes", Caption: "Frame SNR by frame level", Note: "Quantiles over the frames of all clips, dB. Idle: level of the output over the quiet frames."}
+// classesTable is the frame SNR by level class.
+func classesTable(b *book, t *bench.Traces) gridTable {
+	g := gridTable{ID: "classes", Caption: "Frame SNR by frame level", Note: "Quantiles over the frames of all clips, dB."}
 	g.Head = append(words("design", "frames"), headCell{Text: "bits"}, headCell{Text: "count"}, headCell{Text: "5 %", Unit: "dB"},
 		headCell{Text: "25 %", Unit: "dB"}, headCell{Text: "median", Unit: "dB"}, headCell{Text: "75 %", Unit: "dB"},
-		headCell{Text: "95 %", Unit: "dB"}, headCell{Text: "idle", Unit: "dBov"})
+		headCell{Text: "95 %", Unit: "dB"})
 	for _, d := range b.ranked() {
 		for _, class := range classes {
 			s := spreadOf(t, d.Spec, class.name)
@@ -123,11 +123,7 @@ func idleTable(b *book, t *bench.Traces) gridTable {
 			for _, q := range s.Quantiles {
 				row = append(row, decimal(q, 1))
 			}
-			idle := said("")
-			if class.name == "quiet" {
-				idle = decimal(s.IdleDBov, 1)
-			}
-			g.Rows = append(g.Rows, append(row, idle))
+			g.Rows = append(g.Rows, row)
 		}
 	}
 	return g

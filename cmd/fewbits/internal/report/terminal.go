@@ -16,10 +16,15 @@ import (
 // the escape codes of ECMA-48.
 func Terminal(w io.Writer, r *bench.Results, width int, color bool) error {
 	b := open(r)
-	cols, left := fit(b, columns(b), width)
+	cols, left := fit(columns(b), b.ranked(), width)
 	var out strings.Builder
 	if len(r.Designs) > 0 {
-		out.WriteString(grid(b, cols, color))
+		out.WriteString(grid(b, cols, b.ranked(), color))
+		out.WriteString("\n\n")
+	}
+	if idle := b.idlers(); len(idle) > 0 {
+		cols, _ := fit(idleColumns(b), idle, width)
+		out.WriteString(grid(b, cols, idle, color))
 		out.WriteString("\n\n")
 	}
 	limit := width
@@ -34,8 +39,8 @@ func Terminal(w io.Writer, r *bench.Results, width int, color bool) error {
 	return err
 }
 
-// grid draws the table: designs by bits, the best first.
-func grid(b *book, cols []column, color bool) string {
+// grid draws a table of designs that come by bits.
+func grid(b *book, cols []column, designs []*bench.Design, color bool) string {
 	t := table.NewWriter()
 	t.SetStyle(look())
 	var head table.Row
@@ -45,7 +50,7 @@ func grid(b *book, cols []column, color bool) string {
 	t.SetColumnConfigs(configs(cols))
 	t.AppendHeader(head)
 	bits := -1
-	for _, d := range b.ranked() {
+	for _, d := range designs {
 		if bits >= 0 && d.Bits != bits {
 			t.AppendSeparator()
 		}

@@ -53,7 +53,7 @@ func tradeoff(b *book, t *bench.Traces, quality, cost string) plate {
 	p.Grid(drawing.Ticks(p.X.Min, p.X.Max, 9), drawing.Ticks(p.Y.Min, p.Y.Max, 8), costLabel(cost), b.quality(quality))
 	caption := "Filled marks: pooled over all frames and clips."
 	if quality == b.Leading {
-		caption += " Upright bars: 95 % interval of " + b.intervalOf() + "; the tick on it is the mean over clips."
+		caption += " Upright bars: its 95 % interval."
 	}
 	if cost == "bits" {
 		caption += " Designs of the same number of bits stand a little apart so that none hides another."
@@ -101,7 +101,7 @@ func tradeoffLine(b *book, p drawing.Panel, i int, k, quality, cost string) stri
 	p.Curve(drawing.Stroke(i), xs, ys)
 	for j, d := range members {
 		if quality == b.Leading {
-			whisker(p, i, xs[j], b.interval(d.Spec), b.pooled[d.Spec].ClipMeans[quality])
+			whisker(p, i, xs[j], b.interval(d.Spec))
 		}
 		at := p.Point(xs[j], ys[j])
 		p.F.Marker(i, at.X, at.Y, "data-design", d.Spec, "data-x", full(b.cost(d, cost)), "data-y", full(ys[j]))
@@ -109,20 +109,15 @@ func tradeoffLine(b *book, p drawing.Panel, i int, k, quality, cost string) stri
 	return k + ": " + strings.Join(said, ", ")
 }
 
-// whisker draws an interval and the mean it is about.
-func whisker(p drawing.Panel, series int, x float64, v [2]bench.Num, mean bench.Num) {
+// whisker draws an interval.
+func whisker(p drawing.Panel, series int, x float64, v [2]bench.Num) {
 	if !v[0].Defined() || !v[1].Defined() {
 		return
 	}
 	ink := drawing.Ink{Role: drawing.Role(series), Width: 1.2}
 	lo, hi := p.Point(x, float64(v[0])), p.Point(x, float64(v[1]))
 	p.F.Line(ink, lo, hi)
-	ends := []float64{float64(v[0]), float64(v[1])}
-	if mean.Defined() {
-		ends = append(ends, float64(mean))
-	}
-	for _, y := range ends {
-		at := p.Point(x, y)
+	for _, at := range []drawing.Point{lo, hi} {
 		p.F.Line(ink, drawing.Point{X: at.X - 3, Y: at.Y}, drawing.Point{X: at.X + 3, Y: at.Y})
 	}
 }
