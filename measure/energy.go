@@ -40,19 +40,24 @@ func (e *energy) value() float64 {
 
 // sumSquares adds the squares of at most 2^33 words; unit 2^-30.
 func sumSquares(words []int16) uint64 {
-	var a, b uint64
-	for len(words) >= 2 {
-		x, y := int64(words[0]), int64(words[1])
-		a += uint64(x * x)
-		b += uint64(y * y)
-		words = words[2:]
+	var a, b, c, d uint64
+	for len(words) >= 4 {
+		w, x, y, z := int64(words[0]), int64(words[1]), int64(words[2]), int64(words[3])
+		a += uint64(w * w)
+		b += uint64(x * x)
+		c += uint64(y * y)
+		d += uint64(z * z)
+		words = words[4:]
 	}
-	if len(words) == 1 {
-		x := int64(words[0])
-		a += uint64(x * x)
+	for _, w := range words {
+		a += uint64(int64(w) * int64(w))
 	}
-	return a + b
+	return a + b + c + d
 }
+
+// WordEnergy is sum x^2 of at most 2^33 16-bit words, full scale = 1.0; exact
+// but for the last rounding.
+func WordEnergy(words []int16) float64 { return float64(sumSquares(words)) / (1 << 30) }
 
 // DB is 10 log10 of a power or energy ratio; -Inf for 0, NaN below.
 func DB(ratio float64) float64 { return 10 * math.Log10(ratio) }

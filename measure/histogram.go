@@ -135,9 +135,12 @@ func (h *Histogram) Sparse() (values []float64, counts []int64) {
 }
 
 // Levels is what Levels.AddWords would have gathered from the samples.
-func (h *Histogram) Levels() Levels {
+func (h *Histogram) Levels() Levels { return LevelsOf(h.Counts()) }
+
+// LevelsOf is the same from 65,536 counts, that of word w at int(w)+32768.
+func LevelsOf(counts []int64) Levels {
 	var l Levels
-	for i, n := range h.Counts() {
+	for i, n := range counts[:words16] {
 		if n == 0 {
 			continue
 		}
@@ -148,6 +151,6 @@ func (h *Histogram) Levels() Levels {
 		l.wordBits |= uint16(w)
 		l.peak = max(l.peak, math.Abs(float64(w))/(words16/2))
 	}
-	l.Zeros = h.counts[words16/2]
+	l.Zeros = counts[words16/2]
 	return l
 }

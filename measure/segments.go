@@ -73,28 +73,34 @@ func OpenSNR(f Frame, l Limits) float64 {
 // framing costs beside the kernel: Log is the fastest.
 func ratioDB(signal, err float64) float64 { return (10 / math.Ln10) * math.Log(signal/err) }
 
-// AddFrame adds one frame to the segmental measures and frame counts.
-func AddFrame(t *Tally, f Frame, l Limits) {
+// AddFrame adds one frame to the segmental measures and frame counts. It
+// returns the frame's SNR in dB with the error floored, as the open measure
+// has it but for the limits; NaN without signal.
+func AddFrame(t *Tally, f Frame, l Limits) (openDB float64) {
 	if f.Signal == 0 {
 		t.FramesSilent++
-		return
+		return math.NaN()
 	}
 	db := ratioDB(f.Signal, f.Error)
+	openDB = db
+	if f.Error < f.Floor {
+		openDB = ratioDB(f.Signal, f.Floor)
+	}
 	t.Segmental[SegAll].add(db, l.Lower, l.Upper)
 	if !f.InRange {
 		t.FramesOut++
 		t.SignalOut += f.Signal
 		t.ErrorOut += f.Error
-		return
+		return openDB
 	}
 	t.FramesIn++
 	t.Segmental[SegInRange].add(db, l.Lower, l.Upper)
 	open := &t.Segmental[SegOpen]
 	if f.Error < f.Floor {
 		open.Floored++
-		db = ratioDB(f.Signal, f.Floor)
 	}
-	open.add(db, OpenLower, l.OpenUpper)
+	open.add(openDB, OpenLower, l.OpenUpper)
+	return openDB
 }
 
 func (s *Segments) add(db, lower, upper float64) {

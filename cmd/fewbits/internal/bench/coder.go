@@ -51,6 +51,7 @@ type coded struct {
 	frames int       // per channel
 	signal []float64 // channel-major: [channel*frames+frame]
 	errs   []float64 // [(channel*frames+frame)*designs+design]
+	spread *spread
 }
 
 // block is the block of the frame that starts at a sample.
@@ -66,7 +67,7 @@ func (c *coder) code(s *survey, p planes, at chunk, set Settings) coded {
 	n := p.samples() / s.frame
 	out := coded{
 		first: s.block(at.start), frames: n,
-		signal: make([]float64, channels*n), errs: make([]float64, channels*n*d),
+		signal: make([]float64, channels*n), errs: make([]float64, channels*n*d), spread: newSpread(d),
 	}
 	for range s.block(at.start+at.samples-1) - out.first + 1 {
 		out.blocks = append(out.blocks, make([]measure.Tally, d))
@@ -93,9 +94,12 @@ func (c *coder) count(s *survey, ch int, at chunk, set Settings, out *coded, sig
 			Samples: s.frame, Signal: sig, Floor: floor,
 			InRange: measure.InRange(sig, s.frame, s.inRange[ch]),
 		}
+		class := s.class(sig, ch)
 		for i := range tallies {
 			frame.Error = errs[f*d+i]
-			measure.AddFrame(&tallies[i], frame, lim)
+			if db := measure.AddFrame(&tallies[i], frame, lim); sig > 0 {
+				out.spread.add(i, class, db)
+			}
 		}
 	}
 }

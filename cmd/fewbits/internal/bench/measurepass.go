@@ -37,7 +37,7 @@ func (e *engine) measure(s *survey, designs []made) (*outcome, error) {
 		}
 		defer p.done()
 		r := codedChunk{coded: c.code(s, p, c0, e.plan.Settings)}
-		r.envelope, r.spread = tr.envelope(p, c0), spreadOf(s, r.coded, len(designs))
+		r.envelope = tr.envelope(p, c0)
 		r.rows = rows.format(s, c0, r.coded)
 		if sound != nil {
 			err = sound.write(p, c0.start)
@@ -70,7 +70,6 @@ func (e *engine) measure(s *survey, designs []made) (*outcome, error) {
 type codedChunk struct {
 	coded
 	envelope []span
-	spread   *spread
 	rows     []byte
 }
 

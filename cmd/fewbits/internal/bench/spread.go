@@ -29,23 +29,10 @@ func newSpread(designs int) *spread {
 	return &spread{make([][classes][spreadBins]int64, designs)}
 }
 
-// spreadOf counts a chunk.
-func spreadOf(s *survey, c coded, designs int) *spread {
-	out := newSpread(designs)
-	floor := measure.FloorOf(s.frame, s.clip.LSB)
-	for f, sig := range c.signal {
-		if sig == 0 {
-			continue
-		}
-		ch := f / c.frames
-		class := s.class(sig, ch)
-		for d := range designs {
-			err := math.Max(c.errs[f*designs+d], floor)
-			db := measure.FrameSNR(sig, err, measure.OpenLower, measure.OpenUpper)
-			out.counts[d][class][int((db-measure.OpenLower)/spreadStep)]++
-		}
-	}
-	return out
+// add counts a frame of a class.
+func (s *spread) add(design, class int, db float64) {
+	db = max(measure.OpenLower, min(measure.OpenUpper, db))
+	s.counts[design][class][int((db-measure.OpenLower)/spreadStep)]++
 }
 
 // class says where a frame's level lies: quiet is out of range, middle below

@@ -2,7 +2,6 @@ package bench
 
 import (
 	"math"
-	"sync"
 
 	"fewbits/codec/family"
 	"fewbits/measure"
@@ -56,7 +55,7 @@ func (e *engine) survey(rec *samples.Recording, file string) (*survey, error) {
 
 // readLevels is the first pass over one recording.
 func (e *engine) readLevels(s *survey) (stretch, error) {
-	var mu sync.Mutex
+	hists := gather{e: e}
 	rate := s.clip.RateHz
 	all := newStretch(s.clip.Channels, rate, 0, e.part)
 	work := func(c chunk) (stretch, error) {
@@ -69,11 +68,11 @@ func (e *engine) readLevels(s *survey) (stretch, error) {
 		t := newStretch(s.clip.Channels, rate, c.start, e.part)
 		p.survey(int(warm), t)
 		if p.reals != nil {
-			mu.Lock()
-			defer mu.Unlock()
-			for _, x := range p.reals {
-				s.hist.Add(x[warm:])
-			}
+			hists.count(func(h *measure.Histogram) {
+				for _, x := range p.reals {
+					h.Add(x[warm:])
+				}
+			})
 		}
 		return t, nil
 	}
@@ -86,9 +85,11 @@ func (e *engine) readLevels(s *survey) (stretch, error) {
 		}
 		return nil
 	})
+	hists.into(s.hist)
 	if s.rec.Words() {
-		for _, p := range all.faults {
+		for c, p := range all.faults {
 			s.hist.AddCounts(p.Counts())
+			all.levels[c] = measure.LevelsOf(p.Counts())
 		}
 	}
 	return all, err
@@ -113,14 +114,14 @@ func (e *engine) part(rate int, start int64) *fault.Part {
 	return fault.NewPart(rate, start)
 }
 
-// survey sums a chunk whose first warm samples belong to the chunk before.
+// survey sums a chunk whose first warm samples belong to the chunk before. The
+// levels of words come from the counts of the fault parts, in the end.
 func (p planes) survey(warm int, t stretch) {
 	for c := range t.levels {
 		if p.words != nil {
 			w := p.words[c]
 			t.active[c].WarmWords(w[:warm])
 			t.active[c].AddWords(w[warm:])
-			t.levels[c].AddWords(w[warm:])
 			t.faults[c].AddWords(w[warm:])
 			continue
 		}
@@ -167,8 +168,8 @@ type ranged struct {
 
 // readRanges is the second pass: which frames are in range.
 func (e *engine) readRanges(s *survey) error {
-	s.in, s.out = new(measure.Histogram), new(measure.Histogram)
-	var mu sync.Mutex
+	s.in = new(measure.Histogram)
+	hists := gather{e: e}
 	var keep *keeper
 	if e.needs(family.FramedData) {
 		keep = &keeper{file: s.clip.File, most: e.share, unit: wordUnit(s.rec.Words(), s.levels.Peak())}
@@ -179,14 +180,8 @@ func (e *engine) readRanges(s *survey) error {
 			return ranged{}, err
 		}
 		defer p.done()
-		in, out := e.histogram(), e.histogram()
-		defer e.giveBack(in)
-		defer e.giveBack(out)
-		r := p.ranges(s, c, in, out, keep)
-		mu.Lock()
-		defer mu.Unlock()
-		s.in.Merge(in)
-		s.out.Merge(out)
+		var r ranged
+		hists.count(func(in *measure.Histogram) { r = p.ranges(s, c, in, keep) })
 		return r, nil
 	}
 	err := chunks(e, s, work, func(_ chunk, r ranged) error {
@@ -197,35 +192,66 @@ func (e *engine) readRanges(s *survey) error {
 		keep.take(r.kept)
 		return nil
 	})
+	hists.into(s.in)
+	if err != nil {
+		return err
+	}
 	s.kept = keep.words()
 	s.clip.NoiseDBov = Num(math.NaN())
 	if s.quietLen > 0 {
 		s.clip.NoiseDBov = Num(measure.DB(s.quietSq / float64(s.quietLen)))
 	}
-	return err
+	return e.countOut(s)
+}
+
+// countOut takes the histogram of the frames out of range from what is left
+// of all samples: without those in range and without the last partial frame.
+func (e *engine) countOut(s *survey) error {
+	s.out = new(measure.Histogram)
+	s.out.Merge(s.hist)
+	s.out.Subtract(s.in)
+	part := s.clip.Samples % int64(s.frame)
+	if part == 0 {
+		return nil
+	}
+	p, err := read(s.rec, s.clip.Samples-part, part)
+	if err != nil {
+		return err
+	}
+	defer p.done()
+	tail := e.histogram()
+	defer e.giveBack(tail)
+	for c := range s.clip.Channels {
+		p.countInto(tail, c, 0, int(part))
+	}
+	s.out.Subtract(tail)
+	return nil
+}
+
+// countInto counts samples a to b of a channel.
+func (p planes) countInto(h *measure.Histogram, ch, a, b int) {
+	if p.words != nil {
+		h.AddWords(p.words[ch][a:b])
+	} else {
+		h.Add(p.reals[ch][a:b])
+	}
 }
 
 // ranges sorts a chunk's whole frames.
-func (p planes) ranges(s *survey, c chunk, in, out *measure.Histogram, keep *keeper) (r ranged) {
+func (p planes) ranges(s *survey, c chunk, in *measure.Histogram, keep *keeper) (r ranged) {
 	for ch := range s.clip.Channels {
 		for f := range int(c.samples) / s.frame {
 			a, b := f*s.frame, (f+1)*s.frame
 			r.frames++
 			sq := p.energy(ch, a, b)
-			to := out
-			if measure.InRange(sq, s.frame, s.inRange[ch]) {
-				to = in
-				r.in++
-				r.kept = keep.consider(r.kept, ch, c.start+int64(a), p, a, b)
-			} else {
+			if !measure.InRange(sq, s.frame, s.inRange[ch]) {
 				r.quietSq += sq
 				r.quietLen += int64(s.frame)
+				continue
 			}
-			if p.words != nil {
-				to.AddWords(p.words[ch][a:b])
-			} else {
-				to.Add(p.reals[ch][a:b])
-			}
+			r.in++
+			r.kept = keep.consider(r.kept, ch, c.start+int64(a), p, a, b)
+			p.countInto(in, ch, a, b)
 		}
 	}
 	return r
@@ -234,11 +260,7 @@ func (p planes) ranges(s *survey, c chunk, in, out *measure.Histogram, keep *kee
 // energy is sum x^2 of samples a to b of a channel.
 func (p planes) energy(ch, a, b int) float64 {
 	if p.words != nil {
-		var sq int64
-		for _, w := range p.words[ch][a:b] {
-			sq += int64(w) * int64(w)
-		}
-		return float64(sq) / (1 << 30)
+		return measure.WordEnergy(p.words[ch][a:b])
 	}
 	var sq float64
 	for _, x := range p.reals[ch][a:b] {

@@ -48,12 +48,26 @@ func (t *tracer) envelope(p planes, c chunk) []span {
 		if first+i == len(t.spans)-1 {
 			hi = c.samples
 		}
-		for j := lo; j < hi; j++ {
-			x := p.at(0, int(j))
-			out[i].lo, out[i].hi = min(out[i].lo, x), max(out[i].hi, x)
+		if lo < hi {
+			out[i] = p.extent(int(lo), int(hi))
 		}
 	}
 	return out
+}
+
+// extent of samples a to b of the first channel, 0 included.
+func (p planes) extent(a, b int) (s span) {
+	if p.words == nil {
+		for _, x := range p.reals[0][a:b] {
+			s.lo, s.hi = min(s.lo, x), max(s.hi, x)
+		}
+		return s
+	}
+	var lo, hi int16
+	for _, w := range p.words[0][a:b] {
+		lo, hi = min(lo, w), max(hi, w)
+	}
+	return span{float64(lo) / (1 << 15), float64(hi) / (1 << 15)}
 }
 
 // add enters a chunk, in order.
