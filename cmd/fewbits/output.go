@@ -1,9 +1,11 @@
 package main
 
 import (
+	"errors"
 	"io"
 	"os"
 	"path/filepath"
+	"sync"
 
 	"github.com/spf13/cobra"
 	"golang.org/x/term"
@@ -16,15 +18,23 @@ import (
 // writeOutputs fills the output folder with everything but the audio, which
 // is there already.
 func writeOutputs(out *folder.Folder, r *bench.Results, t *bench.Traces, pictures string, audio bool) error {
-	for name, write := range map[string]func(io.Writer) error{
-		"results.json": func(w io.Writer) error { return report.JSON(w, r) },
-		"traces.json":  func(w io.Writer) error { return report.TracesJSON(w, t) },
-		"summary.csv":  func(w io.Writer) error { return report.Summary(w, r) },
-		"report.html":  func(w io.Writer) error { return report.HTML(w, r, t, report.Options{Audio: audio}) },
-	} {
-		if err := writeFile(out, name, write); err != nil {
-			return err
-		}
+	files := []struct {
+		name  string
+		write func(io.Writer) error
+	}{
+		{"report.html", func(w io.Writer) error { return report.HTML(w, r, t, report.Options{Audio: audio}) }},
+		{"results.json", func(w io.Writer) error { return report.JSON(w, r) }},
+		{"traces.json", func(w io.Writer) error { return report.TracesJSON(w, t) }},
+		{"summary.csv", func(w io.Writer) error { return report.Summary(w, r) }},
+	}
+	errs := make([]error, len(files))
+	var group sync.WaitGroup
+	for i, f := range files {
+		group.Go(func() { errs[i] = writeFile(out, f.name, f.write) })
+	}
+	group.Wait()
+	if err := errors.Join(errs...); err != nil {
+		return err
 	}
 	if pictures == "none" {
 		return nil

@@ -53,9 +53,18 @@ func (p *progress) step(s bench.Step) {
 		p.said = now
 		spent := now.Sub(p.begun).Seconds()
 		rate := float64(s.Done) / spent
-		fmt.Fprintf(p.log, "fewbits: %s: %.0f %% of %.1f million samples, %.1f million a second, %.0f s left\n",
-			s.Pass, 100*float64(s.Done)/float64(s.Total), float64(s.Total)/1e6, rate/1e6, float64(s.Total-s.Done)/rate)
+		fmt.Fprintln(p.log, progressLine(s, rate))
 	}
+}
+
+// progressLine says how far a pass is at rate samples or designs a second.
+func progressLine(s bench.Step, rate float64) string {
+	unit, per := "million samples", 1e6
+	if s.Unit == "designs" {
+		unit, per = "designs", 1
+	}
+	return fmt.Sprintf("fewbits: %s: %.0f %% of %.4g %s, %.3g a second, %.0f s left",
+		s.Pass, 100*float64(s.Done)/float64(s.Total), float64(s.Total)/per, unit, rate/per, float64(s.Total-s.Done)/rate)
 }
 
 // next begins a pass.
@@ -67,7 +76,7 @@ func (p *progress) next(s bench.Step, now time.Time) {
 			mpb.BarRemoveOnComplete(),
 			mpb.PrependDecorators(decor.Name(s.Pass+" ", decor.WC{W: 12})),
 			mpb.AppendDecorators(decor.Percentage(), decor.Name("  "),
-				decor.AverageSpeed(0, "%.0f samples/s  "), decor.AverageETA(decor.ET_STYLE_GO), decor.Name(" left")))
+				decor.AverageSpeed(0, "%.3g "+s.Unit+"/s  "), decor.AverageETA(decor.ET_STYLE_GO), decor.Name(" left")))
 	}
 }
 

@@ -3,6 +3,7 @@ package model
 import (
 	"fmt"
 	"math"
+	"sync"
 )
 
 // Data is what a model is fitted to: how often each value occurs.
@@ -70,10 +71,13 @@ func FitAll(data Data) ([]Fitted, error) {
 	if err != nil {
 		return nil, err
 	}
-	var out []Fitted
-	for _, name := range FitNames() {
-		out = append(out, fit(name, candidates[name], data, b))
+	names := FitNames()
+	out := make([]Fitted, len(names))
+	var group sync.WaitGroup
+	for i, name := range names {
+		group.Go(func() { out[i] = fit(name, candidates[name], data, b) })
 	}
+	group.Wait()
 	return out, nil
 }
 

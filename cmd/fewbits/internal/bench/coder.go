@@ -1,6 +1,8 @@
 package bench
 
 import (
+	"sync"
+
 	"fewbits/codec"
 	"fewbits/measure"
 )
@@ -14,21 +16,45 @@ type coder struct {
 	search  []*measure.Search // for all others
 }
 
-func newCoder(s *survey, designs []made) *coder {
-	c, words := &coder{designs: designs}, s.rec.Words()
-	for _, d := range designs {
-		if words {
-			c.lookups = append(c.lookups, measure.Lookup(d.grid))
-		} else {
-			s := d.stair
-			c.search = append(c.search, measure.NewSearch(s.Thresholds, s.Values, s.Lo, s.Hi, s.Tie == codec.TieOut))
-		}
-	}
-	if words {
-		c.kernel = measure.NewKernel(c.lookups)
+func (e *engine) newCoder(s *survey, designs []made) *coder {
+	c := &coder{designs: designs}
+	if s.rec.Words() {
+		c.lookups, c.kernel = e.tables(designs)
 		c.toggles = measure.NewToggles(c.lookups, s.quietPeak())
+		return c
+	}
+	for _, d := range designs {
+		s := d.stair
+		c.search = append(c.search, measure.NewSearch(s.Thresholds, s.Values, s.Lo, s.Hi, s.Tie == codec.TieOut))
 	}
 	return c
+}
+
+// tableSet is what all 16-bit clips coded with the same designs share; making
+// it takes as long as measuring a million samples.
+type tableSet struct {
+	of      *made // the first of the designs
+	once    sync.Once
+	lookups []measure.Lookup
+	kernel  *measure.Kernel
+}
+
+// tables gives the tables of designs, made anew where the last ones were for
+// others.
+func (e *engine) tables(designs []made) ([]measure.Lookup, *measure.Kernel) {
+	e.mu.Lock()
+	if e.last == nil || e.last.of != &designs[0] {
+		e.last = &tableSet{of: &designs[0]}
+	}
+	t := e.last
+	e.mu.Unlock()
+	t.once.Do(func() {
+		for _, d := range designs {
+			t.lookups = append(t.lookups, measure.Lookup(d.grid))
+		}
+		t.kernel = measure.NewKernel(t.lookups)
+	})
+	return t.lookups, t.kernel
 }
 
 // quietPeak bounds the words of all frames out of range.
@@ -142,11 +168,18 @@ func (c *coder) frames(s *survey, x []float64, ch int, tallies []measure.Tally, 
 }
 
 // whole adds what the histograms of a 16-bit clip say about each design.
-func (c *coder) whole(s *survey, tallies []measure.Tally) {
+func (e *engine) whole(s *survey, c *coder, tallies []measure.Tally) {
+	all, in, out := e.histogram(), e.histogram(), e.histogram()
+	s.all.AddTo(all)
+	s.ranged.AddTo(in)
+	s.quiet.AddTo(out)
 	for i, l := range c.lookups {
-		t := measure.TallyHistogram(s.hist, l)
-		t.AddInRange(measure.EnergiesOf(s.in, l))
-		t.AddQuiet(measure.EnergiesOf(s.out, l), s.quietLen)
+		t := measure.TallyHistogram(all, l)
+		t.AddInRange(measure.EnergiesOf(in, l))
+		t.AddQuiet(measure.EnergiesOf(out, l), s.quietLen)
 		tallies[i].Merge(&t)
 	}
+	e.giveBack(all)
+	e.giveBack(in)
+	e.giveBack(out)
 }

@@ -18,18 +18,23 @@ type made struct {
 	grid  codec.Grid
 }
 
-// makeDesigns turns specs into staircases on the given material. who says on
+// makeDesigns turns the plan's specs into staircases on the given material. who says on
 // which recordings fitted ones were made.
-func makeDesigns(specs []family.Spec, m family.Material, who string) ([]made, error) {
+func (e *engine) makeDesigns(m family.Material, who string) ([]made, error) {
+	specs := e.plan.Specs
 	out := make([]made, len(specs))
 	names := map[string]bool{}
 	for i, spec := range specs {
+		if err := e.ctx.Err(); err != nil {
+			return nil, err
+		}
 		got, err := spec.Family.Make(spec, m)
 		if err != nil {
 			return nil, fmt.Errorf("design %q: %w", spec.Text, err)
 		}
 		out[i] = finish(spec, got, who)
 		out[i].Name = unique(spec.Name(), names)
+		e.designed()
 	}
 	return out, nil
 }

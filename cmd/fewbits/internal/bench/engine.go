@@ -19,8 +19,12 @@ type engine struct {
 	parts  sync.Pool // of *fault.Part
 	share  int       // of frames kept of each clip
 
-	mu   sync.Mutex
-	step Step
+	mu           sync.Mutex
+	step         Step
+	last         *tableSet
+	made, toMake int64 // designs
+
+	spread *spread // of all clips measured
 }
 
 func newEngine(ctx context.Context, plan Plan) *engine {
@@ -34,11 +38,27 @@ func newEngine(ctx context.Context, plan Plan) *engine {
 func (e *engine) begin(pass string, total int64) {
 	e.mu.Lock()
 	defer e.mu.Unlock()
-	e.step = Step{Pass: pass, Total: total}
+	e.step = Step{Pass: pass, Unit: "samples", Total: total}
 	e.tell()
 }
 
-// advance reports n more samples done.
+// designing starts or resumes making designs, of which e.toMake are to be made.
+func (e *engine) designing() {
+	e.mu.Lock()
+	defer e.mu.Unlock()
+	e.step = Step{Pass: "designing", Unit: "designs", Done: e.made, Total: e.toMake}
+	e.tell()
+}
+
+// designed reports one more design made.
+func (e *engine) designed() {
+	e.mu.Lock()
+	e.made++
+	e.mu.Unlock()
+	e.advance(1)
+}
+
+// advance reports n more samples, or designs, done.
 func (e *engine) advance(n int64) {
 	e.mu.Lock()
 	defer e.mu.Unlock()

@@ -17,12 +17,10 @@ const lossLevels = 64
 func (e *engine) fitClip(s *survey) {
 	e.tokens <- struct{}{}
 	defer func() { <-e.tokens }()
-	for _, part := range []struct {
-		over string
-		hist *measure.Histogram
-	}{{"all", s.hist}, {"in-range", s.in}} {
-		s.clip.Fits = append(s.clip.Fits, fitsOf(part.hist, s.clip.LSB, part.over)...)
-	}
+	inRange := later(func() ([]Fit, error) { return fitsOf(s.in, s.clip.LSB, "in-range"), nil })
+	s.clip.Fits = append(s.clip.Fits, fitsOf(s.hist, s.clip.LSB, "all")...)
+	in, _ := inRange()
+	s.clip.Fits = append(s.clip.Fits, in...)
 }
 
 // fitted is one model with its entry for the results; model is nil where the

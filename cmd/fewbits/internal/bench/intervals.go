@@ -58,16 +58,14 @@ func byBits(designs []Design) [][]int {
 // traces gathers what pictures need.
 func (e *engine) traces(r *Results, surveys []*survey, outcomes []*outcome, sets [][]made) (*Traces, error) {
 	t := &Traces{Schema: "fewbits/traces/1", Clips: []ClipTrace{}, Sweep: []Curve{}, Sine: []Curve{}, Models: []ModelCurve{}, Bounds: []Bound{}}
-	sum := newSpread(len(r.Designs))
 	var all measure.Histogram
 	for i, o := range outcomes {
 		if i < mostTraces {
 			t.Clips = append(t.Clips, o.trace)
 		}
-		sum.merge(o.spread)
-		all.Merge(surveys[i].hist)
+		surveys[i].all.AddTo(&all)
 	}
-	t.Spread = sum.rows(r.Designs, r.Pooled)
+	t.Spread = e.spread.rows(r.Designs, r.Pooled)
 	t.Edges, t.Negative, t.Positive = logHistogram(all.Counts())
 	if p := newPool(surveys); p.energy > 0 {
 		t.curvesOf(fitModels(&p.in, p.lsb, "in-range"))

@@ -29,8 +29,8 @@ type pool struct {
 func newPool(surveys []*survey) *pool {
 	p := &pool{surveys: surveys, exact: true}
 	for _, s := range surveys {
-		p.hist.Merge(s.hist)
-		p.in.Merge(s.in)
+		s.all.AddTo(&p.hist)
+		s.ranged.AddTo(&p.in)
 		p.energy += s.levels.Energy()
 		p.samples += s.levels.Samples
 		if s.active > 0 {

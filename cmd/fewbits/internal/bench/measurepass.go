@@ -14,7 +14,7 @@ type outcome struct {
 
 // measure codes a clip with every design, measures it and writes the audio.
 func (e *engine) measure(s *survey, designs []made) (*outcome, error) {
-	c := newCoder(s, designs)
+	c := e.newCoder(s, designs)
 	out := newOutcome(len(designs))
 	tr := newTracer(s, designs)
 	var sound *audio
@@ -54,7 +54,7 @@ func (e *engine) measure(s *survey, designs []made) (*outcome, error) {
 		return nil, err
 	}
 	if s.rec.Words() {
-		c.whole(s, out.tallies)
+		e.whole(s, c, out.tallies)
 	}
 	out.trace = tr.finish(s.clip.File, float64(s.frame)/float64(s.clip.RateHz), designs)
 	if sound != nil {

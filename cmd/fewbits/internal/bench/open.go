@@ -79,6 +79,7 @@ func (e *engine) openOne(file string) (s *survey, err error) {
 		rec = s.rec
 	}
 	e.fitClip(s)
+	e.pack(s)
 	if s.clip.SHA256, err = sum(); err != nil {
 		return nil, err
 	}

@@ -35,7 +35,8 @@ type Plan struct {
 
 // Step tells how far a pass over the recordings is.
 type Step struct {
-	Pass  string // "reading", "designing", "measuring"
-	Done  int64  // samples (all channels) done in this pass
+	Pass  string // "reading", "designing", "measuring", "sweeping"
+	Unit  string // what is counted: "samples" (all channels) or "designs"
+	Done  int64  // done in this pass
 	Total int64
 }

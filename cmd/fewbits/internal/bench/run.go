@@ -95,7 +95,10 @@ func (e *engine) designs(r *Results, surveys []*survey) ([][]made, error) {
 		r.Refused = append(r.Refused, refused...)
 		source, who = train, "other recordings (--train)"
 	}
-	e.begin("designing", 0)
+	e.toMake = int64(len(e.plan.Specs))
+	if e.plan.HoldOut && e.needs(family.Level) {
+		e.toMake *= int64(len(surveys)) + 2 // on all, without each, and for the optimism
+	}
 	all, err := e.makeOn(source, who)
 	if err != nil {
 		return nil, err
@@ -125,7 +128,8 @@ func (e *engine) makeOn(source []*survey, who string) ([]made, error) {
 	if err != nil && e.needs(family.Level) {
 		return nil, err
 	}
-	return makeDesigns(e.plan.Specs, m, who)
+	e.designing()
+	return e.makeDesigns(m, who)
 }
 
 // holdOut makes the set of each clip without that clip.
@@ -163,8 +167,20 @@ func (e *engine) measureAll(surveys []*survey, sets [][]made) ([]*outcome, error
 	}
 	e.begin("measuring", total)
 	out := make([]*outcome, len(surveys))
+	e.spread = newSpread(len(sets[0]))
 	err := inOrder(e.ctx, len(surveys), e.plan.Workers,
 		func(i int) (*outcome, error) { return e.measure(surveys[i], sets[i]) },
-		func(i int, o *outcome) error { out[i] = o; return nil })
+		func(i int, o *outcome) error {
+			e.spread.merge(o.spread)
+			o.spread = nil
+			if i >= mostTraces {
+				o.trace = ClipTrace{}
+			}
+			if len(surveys) >= measure.FewClips {
+				o.blocks = nil
+			}
+			out[i] = o
+			return nil
+		})
 	return out, err
 }

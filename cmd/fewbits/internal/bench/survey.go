@@ -15,12 +15,15 @@ type survey struct {
 	clip     Clip
 	frame    int // samples
 	levels   measure.Levels
-	active   float64   // samples counted as active, all channels; 0 where undefined
-	inRange  []float64 // per channel: mean square that a frame must exceed
-	activeSq []float64 // per channel: mean square at the active level
-	hist     *measure.Histogram
-	in, out  *measure.Histogram // samples of whole frames in range, and not
-	kept     [][]int16          // frames kept for designs that need them
+	active   float64            // samples counted as active, all channels; 0 where undefined
+	inRange  []float64          // per channel: mean square that a frame must exceed
+	activeSq []float64          // per channel: mean square at the active level
+	hist     *measure.Histogram // while surveyed, then nil
+	in       *measure.Histogram // samples of whole frames in range
+	all      measure.Occurrences
+	ranged   measure.Occurrences // as in
+	quiet    measure.Occurrences // of whole frames out of range
+	kept     [][]int16           // frames kept for designs that need them
 	quietSq  float64
 	quietLen int64
 }
@@ -36,7 +39,7 @@ type stretch struct {
 // which frames are in range.
 func (e *engine) survey(rec *samples.Recording, file string) (*survey, error) {
 	info := rec.Info()
-	s := &survey{rec: rec, frame: frameSamples(info.Rate, e.plan.FrameSeconds), hist: new(measure.Histogram)}
+	s := &survey{rec: rec, frame: frameSamples(info.Rate, e.plan.FrameSeconds), hist: e.histogram(), in: e.histogram()}
 	s.clip = Clip{
 		File: file, Format: info.Format(), RateHz: info.Rate, Channels: info.Channels, Samples: info.Frames,
 		Seconds: float64(info.Frames) / float64(info.Rate), Warnings: append([]string{}, info.Warnings...),
@@ -168,7 +171,6 @@ type ranged struct {
 
 // readRanges is the second pass: which frames are in range.
 func (e *engine) readRanges(s *survey) error {
-	s.in = new(measure.Histogram)
 	hists := gather{e: e}
 	var keep *keeper
 	if e.needs(family.FramedData) {
@@ -207,25 +209,32 @@ func (e *engine) readRanges(s *survey) error {
 // countOut takes the histogram of the frames out of range from what is left
 // of all samples: without those in range and without the last partial frame.
 func (e *engine) countOut(s *survey) error {
-	s.out = new(measure.Histogram)
-	s.out.Merge(s.hist)
-	s.out.Subtract(s.in)
-	part := s.clip.Samples % int64(s.frame)
-	if part == 0 {
-		return nil
-	}
-	p, err := read(s.rec, s.clip.Samples-part, part)
-	if err != nil {
-		return err
-	}
-	defer p.done()
-	tail := e.histogram()
+	out, tail := e.histogram(), e.histogram()
+	defer e.giveBack(out)
 	defer e.giveBack(tail)
-	for c := range s.clip.Channels {
-		p.countInto(tail, c, 0, int(part))
+	if part := s.clip.Samples % int64(s.frame); part > 0 {
+		p, err := read(s.rec, s.clip.Samples-part, part)
+		if err != nil {
+			return err
+		}
+		defer p.done()
+		for c := range s.clip.Channels {
+			p.countInto(tail, c, 0, int(part))
+		}
 	}
-	s.out.Subtract(tail)
+	out.Merge(s.hist)
+	out.Subtract(s.in)
+	out.Subtract(tail)
+	s.quiet = out.Occurrences()
 	return nil
+}
+
+// pack keeps the histograms in little memory, once the models are fitted.
+func (e *engine) pack(s *survey) {
+	s.all, s.ranged = s.hist.Occurrences(), s.in.Occurrences()
+	e.giveBack(s.hist)
+	e.giveBack(s.in)
+	s.hist, s.in = nil, nil
 }
 
 // countInto counts samples a to b of a channel.

@@ -37,7 +37,7 @@ type amounted struct {
 func (e *engine) amountsOf(surveys []*survey, sets [][]made) (out []amounted) {
 	var all measure.Histogram
 	for i, s := range surveys {
-		all.Merge(s.hist)
+		s.all.AddTo(&all)
 		if e.plan.HoldOut || i == len(surveys)-1 {
 			values, counts := all.Sparse()
 			out = append(out, amounted{sets[i], values, counts})
