@@ -14,6 +14,7 @@ type coder struct {
 	kernel  *measure.Kernel   // for 16-bit samples
 	toggles *measure.Toggles  // for their quiet frames
 	search  []*measure.Search // for all others
+	spare   sync.Pool         // of coded
 }
 
 func (e *engine) newCoder(s *survey, designs []made) *coder {
@@ -91,10 +92,8 @@ func (s *survey) block(start int64) int {
 func (c *coder) code(s *survey, p planes, at chunk, set Settings) coded {
 	d, channels := len(c.designs), s.clip.Channels
 	n := p.samples() / s.frame
-	out := coded{
-		first: s.block(at.start), frames: n,
-		signal: make([]float64, channels*n), errs: make([]float64, channels*n*d), spread: newSpread(d),
-	}
+	out := c.blank(channels*n, d)
+	out.first, out.frames = s.block(at.start), n
 	for range s.block(at.start+at.samples-1) - out.first + 1 {
 		out.blocks = append(out.blocks, make([]measure.Tally, d))
 	}
@@ -109,6 +108,16 @@ func (c *coder) code(s *survey, p planes, at chunk, set Settings) coded {
 		c.count(s, ch, at, set, &out, signal, errs)
 	}
 	return out
+}
+
+// blank takes what a chunk of so many frames fills from those done with.
+func (c *coder) blank(frames, designs int) coded {
+	out, ok := c.spare.Get().(coded)
+	if !ok || cap(out.signal) < frames {
+		return coded{signal: make([]float64, frames), errs: make([]float64, frames*designs), spread: newSpread(designs)}
+	}
+	clear(out.spread.counts)
+	return coded{signal: out.signal[:frames], errs: out.errs[:frames*designs], spread: out.spread}
 }
 
 // count enters the frames of a channel into the segmental measures.
