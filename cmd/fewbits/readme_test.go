@@ -44,6 +44,9 @@ func shellWords(line string) (words []string) {
 // TestReadmeCommands runs each command of the README, in order, in a folder
 // that holds recordings under the names it uses.
 func TestReadmeCommands(t *testing.T) {
+	if underRace {
+		t.Skip("minutes under the race detector; .ci/run runs it without")
+	}
 	lines := readmeCommands(t)
 	if len(lines) < 5 {
 		t.Fatalf("only %d commands found in README.md", len(lines))
@@ -67,6 +70,9 @@ func TestReadmeCommands(t *testing.T) {
 // TestReadmeShowsRealRuns: each line that the README shows of a run is one that
 // the command above it prints.
 func TestReadmeShowsRealRuns(t *testing.T) {
+	if underRace {
+		t.Skip("minutes under the race detector; .ci/run runs it without")
+	}
 	text, err := os.ReadFile("../../README.md")
 	if err != nil {
 		t.Fatal(err)

@@ -71,6 +71,9 @@ func TestFactsOfTheTrade(t *testing.T) {
 // to gain at 6 bits: 0.90 dB, and neither 400 shaken starts nor three runs of
 // 400,000 annealed moves found a table that gains more.
 func TestSegmentalAimWins(t *testing.T) {
+	if underRace {
+		t.Skip("minutes under the race detector; .ci/run runs it without")
+	}
 	for _, file := range realRecordings(t)[:5] {
 		for _, c := range []struct{ mu, best, figure string }{
 			{"mu-law:4", "lloyd-max:4,from=data,aim=segsnr,symmetry=free", "segsnr_db"},
@@ -99,6 +102,9 @@ func TestSegmentalAimWins(t *testing.T) {
 // recording, beyond the levels of all others, it loses little (without spread
 // 1.6 dB).
 func TestSpreadHoldsOut(t *testing.T) {
+	if underRace {
+		t.Skip("minutes under the race detector; .ci/run runs it without")
+	}
 	const mu, made = "mu-law:4", "lloyd-max:4,from=data,aim=segsnr,spread=14"
 	p := planFor(t, t.TempDir(), realRecordings(t)[:6], mu, made)
 	p.Audio, p.HoldOut = false, true
