@@ -288,6 +288,23 @@ func BenchmarkPlainLloyd(b *testing.B) {
 	}
 }
 
+// BenchmarkLaplacian is ours beside it.
+func BenchmarkLaplacian(b *testing.B) {
+	m, err := model.New("laplacian", 0, 1)
+	if err != nil {
+		b.Fatal(err)
+	}
+	for _, n := range []int{16, 64, 256} {
+		b.Run(fmt.Sprint(n), func(b *testing.B) {
+			for b.Loop() {
+				if _, err := design.LloydMax(m, n, design.Mirror); err != nil {
+					b.Fatal(err)
+				}
+			}
+		})
+	}
+}
+
 // plainLloyd returns the upper levels of an even n.
 func plainLloyd(n int) (y []float64, rounds int) {
 	for k := n/2 + 1; k <= n; k++ {
