@@ -41,19 +41,20 @@ func (e *energy) value() float64 {
 // sumSquares adds the squares of at most 2^33 words; unit 2^-30.
 func sumSquares(words []int16) uint64 {
 	var a, b, c, d uint64
-	for len(words) >= 4 {
-		w, x, y, z := int64(words[0]), int64(words[1]), int64(words[2]), int64(words[3])
-		a += uint64(w * w)
-		b += uint64(x * x)
-		c += uint64(y * y)
-		d += uint64(z * z)
-		words = words[4:]
+	for ; len(words) >= 8; words = words[8:] {
+		w := (*[8]int16)(words)
+		a += square(w[0]) + square(w[4])
+		b += square(w[1]) + square(w[5])
+		c += square(w[2]) + square(w[6])
+		d += square(w[3]) + square(w[7])
 	}
 	for _, w := range words {
-		a += uint64(int64(w) * int64(w))
+		a += square(w)
 	}
 	return a + b + c + d
 }
+
+func square(w int16) uint64 { return uint64(int64(w) * int64(w)) }
 
 // WordEnergy is sum x^2 of at most 2^33 16-bit words, full scale = 1.0; exact
 // but for the last rounding.

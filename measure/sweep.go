@@ -39,9 +39,20 @@ func (s *Search) settleTie(k int, x float64) int {
 }
 
 // SNRAt is the exact SNR in dB at a gain in dB, from a histogram's sparse form;
-// +Inf without error, NaN without signal.
+// +Inf without error, NaN without signal. It sums what EnergiesAt does but for
+// the energies that it has no use for.
 func (s *Search) SNRAt(values []float64, counts []int64, gainDB float64) float64 {
-	return s.EnergiesAt(values, counts, math.Pow(10, gainDB/20)).SNR()
+	gain := math.Pow(10, gainDB/20)
+	var e Energies
+	k := 0
+	for i, v := range values {
+		x, n := gain*v, float64(counts[i])
+		k = s.walk(k, x)
+		d := x - s.values[s.settleTie(k, x)]
+		e.Signal += n * float64(x*x)
+		e.Error += n * float64(d*d)
+	}
+	return e.SNR()
 }
 
 // Sweep is SNRAt for each gain.

@@ -13,8 +13,11 @@ import (
 type audio struct {
 	designs []made
 	outs    []*samples.Writer // reconstruction and error of each design in turn
-	words   [][]int16         // tables of both for 16-bit in and out; nil otherwise
+	words   []*wordTable      // tables of both for 16-bit in and out; nil otherwise
 }
+
+// wordTable maps word w at position w + 32768.
+type wordTable [1 << 16]int16
 
 // openAudio creates two files a design.
 func (e *engine) openAudio(s *survey, designs []made) (*audio, error) {
@@ -43,8 +46,8 @@ func (e *engine) openAudio(s *survey, designs []made) (*audio, error) {
 
 // wordTables gives, for each 16-bit word, the reconstruction and the error on
 // the same grid, rounded away from zero.
-func wordTables(g codec.Grid) (y, e []int16) {
-	y, e = make([]int16, len(g.Index)), make([]int16, len(g.Index))
+func wordTables(g codec.Grid) (y, e *wordTable) {
+	y, e = new(wordTable), new(wordTable)
 	for i, k := range g.Index {
 		v := g.Values[k]
 		y[i] = word(v)
@@ -60,12 +63,19 @@ func word(v float64) int16 {
 
 // write codes one chunk into every file.
 func (a *audio) write(p planes, start int64) error {
+	var out planes
+	if a.words != nil {
+		for range p.words {
+			out.words = append(out.words, plane[int16](&spareWords, int64(p.samples())))
+		}
+		defer out.done()
+	}
 	for i, w := range a.outs {
 		var err error
-		switch {
-		case a.words != nil:
-			err = w.WriteWordsAt(mapWords(p.words, a.words[i]), start)
-		default:
+		if a.words != nil {
+			a.words[i].look(out.words, p.words)
+			err = w.WriteWordsAt(out.words, start)
+		} else {
 			_, err = w.WriteAt(a.reals(p, i), start)
 		}
 		if err != nil {
@@ -75,16 +85,14 @@ func (a *audio) write(p planes, start int64) error {
 	return nil
 }
 
-// mapWords looks every word up.
-func mapWords(in [][]int16, table []int16) [][]int16 {
-	out := make([][]int16, len(in))
+// look looks every word up.
+func (t *wordTable) look(out, in [][]int16) {
 	for c, words := range in {
-		out[c] = make([]int16, len(words))
+		to := out[c][:len(words)]
 		for i, w := range words {
-			out[c][i] = table[int(w)+32768]
+			to[i] = t[uint16(w)^0x8000]
 		}
 	}
-	return out
 }
 
 // reals computes the reconstruction (even i) or the error (odd) of a chunk.

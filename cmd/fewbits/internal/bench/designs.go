@@ -18,23 +18,35 @@ type made struct {
 	grid  codec.Grid
 }
 
-// makeDesigns turns the plan's specs into staircases on the given material. who says on
-// which recordings fitted ones were made.
+// makeDesigns turns the plan's specs into staircases on the given material,
+// several at once. who says on which recordings fitted ones were made.
 func (e *engine) makeDesigns(m family.Material, who string) ([]made, error) {
 	specs := e.plan.Specs
 	out := make([]made, len(specs))
 	names := map[string]bool{}
-	for i, spec := range specs {
-		if err := e.ctx.Err(); err != nil {
-			return nil, err
-		}
-		got, err := spec.Family.Make(spec, m)
-		if err != nil {
-			return nil, fmt.Errorf("design %q: %w", spec.Text, err)
-		}
-		out[i] = finish(spec, got, who)
-		out[i].Name = unique(spec.Name(), names)
-		e.designed()
+	type attempt struct {
+		made
+		err error // the first in order of the specs ends it
+	}
+	err := inOrder(e.ctx, len(specs), e.plan.Workers,
+		func(i int) (attempt, error) {
+			got, err := specs[i].Family.Make(specs[i], m)
+			if err != nil {
+				return attempt{err: err}, nil
+			}
+			return attempt{made: finish(specs[i], got, who)}, nil
+		},
+		func(i int, a attempt) error {
+			if a.err != nil {
+				return fmt.Errorf("design %q: %w", specs[i].Text, a.err)
+			}
+			out[i] = a.made
+			out[i].Name = unique(specs[i].Name(), names)
+			e.designed()
+			return nil
+		})
+	if err != nil {
+		return nil, err
 	}
 	return out, nil
 }

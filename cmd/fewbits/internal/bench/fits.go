@@ -17,10 +17,12 @@ const lossLevels = 64
 func (e *engine) fitClip(s *survey) {
 	e.tokens <- struct{}{}
 	defer func() { <-e.tokens }()
-	inRange := later(func() ([]Fit, error) { return fitsOf(s.in, s.clip.LSB, "in-range"), nil })
-	s.clip.Fits = append(s.clip.Fits, fitsOf(s.hist, s.clip.LSB, "all")...)
-	in, _ := inRange()
-	s.clip.Fits = append(s.clip.Fits, in...)
+	inRange := later(func() ([]fitted, error) { return fitModels(s.in, s.clip.LSB, "in-range"), nil })
+	fits := fitModels(s.hist, s.clip.LSB, "all")
+	s.fits, _ = inRange()
+	for _, f := range append(fits, s.fits...) {
+		s.clip.Fits = append(s.clip.Fits, f.Fit)
+	}
 }
 
 // fitted is one model with its entry for the results; model is nil where the
@@ -28,13 +30,6 @@ func (e *engine) fitClip(s *survey) {
 type fitted struct {
 	Fit
 	model model.Model
-}
-
-func fitsOf(h *measure.Histogram, lsb float64, over string) (out []Fit) {
-	for _, f := range fitModels(h, lsb, over) {
-		out = append(out, f.Fit)
-	}
-	return out
 }
 
 // fitModels fits all models, the most likely first, and holds the table of
@@ -112,19 +107,17 @@ func designLoss(m model.Model, data design.Histogram, best float64) float64 {
 // fit is the pooled fit of the named model to the in-range samples; "best"
 // takes the least AIC.
 func (p *pool) fit(name string) (model.Model, string, error) {
-	if p.fits == nil {
-		p.fits = fitModels(&p.in, p.lsb, "in-range")
-	}
+	fits := p.fits()
 	best := -1
-	for i, f := range p.fits {
-		if f.model != nil && (f.Model == name || name == "best") && (best < 0 || f.AIC < p.fits[best].AIC) {
+	for i, f := range fits {
+		if f.model != nil && (f.Model == name || name == "best") && (best < 0 || f.AIC < fits[best].AIC) {
 			best = i
 		}
 	}
 	if best < 0 {
 		return nil, "", fmt.Errorf("from=%s: no fit: the recordings have too few samples in range; use scale=rms with laplacian, gaussian or gamma", name)
 	}
-	f := p.fits[best]
+	f := fits[best]
 	how := f.Model
 	if f.Shape.Defined() {
 		how = fmt.Sprintf("%s of shape %.3f", f.Model, float64(f.Shape))

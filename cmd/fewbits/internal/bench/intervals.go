@@ -68,7 +68,7 @@ func (e *engine) traces(r *Results, surveys []*survey, outcomes []*outcome, sets
 	t.Spread = e.spread.rows(r.Designs, r.Pooled)
 	t.Edges, t.Negative, t.Positive = logHistogram(all.Counts())
 	if p := newPool(surveys); p.energy > 0 {
-		t.curvesOf(fitModels(&p.in, p.lsb, "in-range"))
+		t.curvesOf(p.fits())
 	}
 	return t, e.curves(t, r.Designs, e.amountsOf(surveys, sets))
 }

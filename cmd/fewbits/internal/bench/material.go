@@ -4,6 +4,7 @@ import (
 	"errors"
 	"fmt"
 	"math"
+	"sync"
 
 	"fewbits/codec/design"
 	"fewbits/codec/family"
@@ -12,7 +13,7 @@ import (
 
 // pool is what several recordings amount to as material for designs.
 type pool struct {
-	fits     []fitted // to the samples in range, once asked for
+	fits     func() []fitted // to the samples in range, made once
 	surveys  []*survey
 	hist     measure.Histogram
 	in       measure.Histogram
@@ -39,6 +40,10 @@ func newPool(surveys []*survey) *pool {
 		}
 		p.exact = p.exact && s.rec.Words()
 		p.lsb = max(p.lsb, s.clip.LSB)
+	}
+	p.fits = sync.OnceValue(func() []fitted { return fitModels(&p.in, p.lsb, "in-range") })
+	if len(surveys) == 1 {
+		p.fits = func() []fitted { return surveys[0].fits }
 	}
 	return p
 }

@@ -23,6 +23,7 @@ type survey struct {
 	all      measure.Occurrences
 	ranged   measure.Occurrences // as in
 	quiet    measure.Occurrences // of whole frames out of range
+	fits     []fitted            // to the samples in range
 	kept     [][]int16           // frames kept for designs that need them
 	quietSq  float64
 	quietLen int64
@@ -166,6 +167,7 @@ type ranged struct {
 	frames, in int64
 	quietSq    float64
 	quietLen   int64
+	fits       []fitted // to the samples in range
 	kept       []keptFrame
 }
 

@@ -2,6 +2,7 @@ package bench
 
 import (
 	"math"
+	"slices"
 
 	"fewbits/measure"
 )
@@ -63,11 +64,17 @@ func (p planes) extent(a, b int) (s span) {
 		}
 		return s
 	}
-	var lo, hi int16
-	for _, w := range p.words[0][a:b] {
-		lo, hi = min(lo, w), max(hi, w)
+	var lo, hi [4]int16 // side by side: each waits for its own last value
+	words := p.words[0][a:b]
+	for ; len(words) >= 4; words = words[4:] {
+		for k, w := range (*[4]int16)(words) {
+			lo[k], hi[k] = min(lo[k], w), max(hi[k], w)
+		}
 	}
-	return span{float64(lo) / (1 << 15), float64(hi) / (1 << 15)}
+	for _, w := range words {
+		lo[0], hi[0] = min(lo[0], w), max(hi[0], w)
+	}
+	return span{float64(slices.Min(lo[:])) / (1 << 15), float64(slices.Max(hi[:])) / (1 << 15)}
 }
 
 // add enters a chunk, in order.
