@@ -39,11 +39,13 @@ func (s *Search) settleTie(k int, x float64) int {
 }
 
 // SNRAt is the exact SNR in dB at a gain in dB, from a histogram's sparse form;
-// +Inf without error, NaN without signal. It sums what EnergiesAt does but for
-// the energies that it has no use for.
+// +Inf without error, NaN without signal.
 func (s *Search) SNRAt(values []float64, counts []int64, gainDB float64) float64 {
-	gain := math.Pow(10, gainDB/20)
-	var e Energies
+	return s.ErrorAt(values, counts, math.Pow(10, gainDB/20)).SNR()
+}
+
+// ErrorAt is EnergiesAt with Signal and Error alone, which is faster.
+func (s *Search) ErrorAt(values []float64, counts []int64, gain float64) (e Energies) {
 	k := 0
 	for i, v := range values {
 		x, n := gain*v, float64(counts[i])
@@ -52,7 +54,7 @@ func (s *Search) SNRAt(values []float64, counts []int64, gainDB float64) float64
 		e.Signal += n * float64(x*x)
 		e.Error += n * float64(d*d)
 	}
-	return e.SNR()
+	return e
 }
 
 // Sweep is SNRAt for each gain.

@@ -66,7 +66,7 @@ func (a *audio) write(p planes, start int64) error {
 	var out planes
 	if a.words != nil {
 		for range p.words {
-			out.words = append(out.words, plane[int16](&spareWords, int64(p.samples())))
+			out.words = append(out.words, plane(&spareWords, int64(p.samples())))
 		}
 		defer out.done()
 	}

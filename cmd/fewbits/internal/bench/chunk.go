@@ -1,8 +1,6 @@
 package bench
 
 import (
-	"sync"
-
 	"fewbits/samples"
 )
 
@@ -17,14 +15,19 @@ type chunk struct {
 	start, samples int64
 }
 
-// chunksOf cuts a recording of n samples a channel at frame borders.
-func chunksOf(n int64, frame int) []chunk {
-	size := int64(max(1, chunkSamples/frame) * frame)
-	var out []chunk
-	for at := int64(0); at < n; at += size {
-		out = append(out, chunk{at, min(size, n-at)})
-	}
-	return out
+// cuts are where a recording of total samples a channel is cut.
+type cuts struct{ total, size int64 }
+
+// cutsOf cuts at frame borders.
+func cutsOf(total int64, frame int) cuts {
+	return cuts{total, int64(max(1, chunkSamples/frame) * frame)}
+}
+
+func (c cuts) count() int { return int((c.total + c.size - 1) / c.size) }
+
+func (c cuts) at(i int) chunk {
+	start := int64(i) * c.size
+	return chunk{start, min(c.size, c.total-start)}
 }
 
 // planes are the samples of a chunk, one slice a channel: words where the
@@ -35,12 +38,15 @@ type planes struct {
 }
 
 // spareWords and spareReals hold planes that are done with.
-var spareWords, spareReals sync.Pool
+var (
+	spareWords shelf[[]int16]
+	spareReals shelf[[]float64]
+)
 
-// plane takes a slice of n samples from a pool, or makes one.
-func plane[T int16 | float64](spare *sync.Pool, n int64) []T {
-	if s, ok := spare.Get().(*[]T); ok && int64(cap(*s)) >= n {
-		return (*s)[:n]
+// plane takes a slice of n samples from a shelf, or makes one.
+func plane[T int16 | float64](spare *shelf[[]T], n int64) []T {
+	if s, ok := spare.take(); ok && int64(cap(s)) >= n {
+		return s[:n]
 	}
 	return make([]T, n, max(n, chunkSamples+chunkSamples/4))
 }
@@ -51,13 +57,13 @@ func read(r *samples.Recording, start, n int64) (p planes, err error) {
 	if r.Words() {
 		p.words = make([][]int16, channels)
 		for c := range p.words {
-			p.words[c] = plane[int16](&spareWords, n)
+			p.words[c] = plane(&spareWords, n)
 		}
 		return p, r.ReadWords(p.words, start)
 	}
 	p.reals = make([][]float64, channels)
 	for c := range p.reals {
-		p.reals[c] = plane[float64](&spareReals, n)
+		p.reals[c] = plane(&spareReals, n)
 	}
 	return p, r.Read(p.reals, start)
 }
@@ -65,10 +71,10 @@ func read(r *samples.Recording, start, n int64) (p planes, err error) {
 // done allows the planes to be used again; nothing may hold on to them.
 func (p planes) done() {
 	for _, w := range p.words {
-		spareWords.Put(&w)
+		spareWords.put(w)
 	}
 	for _, x := range p.reals {
-		spareReals.Put(&x)
+		spareReals.put(x)
 	}
 }
 

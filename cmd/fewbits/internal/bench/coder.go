@@ -14,7 +14,7 @@ type coder struct {
 	kernel  *measure.Kernel   // for 16-bit samples
 	toggles *measure.Toggles  // for their quiet frames
 	search  []*measure.Search // for all others
-	spare   sync.Pool         // of *coded
+	spare   shelf[*coded]
 }
 
 func (e *engine) newCoder(s *survey, designs []made) *coder {
@@ -112,7 +112,7 @@ func (c *coder) code(s *survey, p planes, at chunk, set Settings) coded {
 
 // blank takes what a chunk of so many frames fills from those done with.
 func (c *coder) blank(frames, designs int) coded {
-	out, ok := c.spare.Get().(*coded)
+	out, ok := c.spare.take()
 	if !ok || cap(out.signal) < frames {
 		return coded{signal: make([]float64, frames), errs: make([]float64, frames*designs), spread: newSpread(designs)}
 	}

@@ -8,6 +8,7 @@ import (
 
 	"fewbits/codec/family"
 	"fewbits/measure"
+	"fewbits/measure/fault"
 )
 
 // engine carries what all passes of a run share.
@@ -15,9 +16,9 @@ type engine struct {
 	ctx    context.Context
 	plan   Plan
 	tokens chan struct{} // one per worker: whoever works on samples holds one
-	hists  sync.Pool
-	parts  sync.Pool // of *fault.Part
-	share  int       // of frames kept of each clip
+	hists  shelf[*measure.Histogram]
+	parts  shelf[*fault.Part]
+	share  int // of frames kept of each clip
 
 	mu           sync.Mutex
 	step         Step
@@ -29,9 +30,7 @@ type engine struct {
 
 func newEngine(ctx context.Context, plan Plan) *engine {
 	plan.Workers = max(1, plan.Workers)
-	e := &engine{ctx: ctx, plan: plan, tokens: make(chan struct{}, plan.Workers)}
-	e.hists.New = func() any { return new(measure.Histogram) }
-	return e
+	return &engine{ctx: ctx, plan: plan, tokens: make(chan struct{}, plan.Workers)}
 }
 
 // begin starts a pass over so many samples.
@@ -74,27 +73,30 @@ func (e *engine) tell() {
 
 // chunks walks a recording: work runs on many chunks at once, take in order.
 func chunks[T any](e *engine, s *survey, work func(c chunk) (T, error), take func(c chunk, t T) error) error {
-	cut := chunksOf(s.clip.Samples, s.frame)
-	return inOrder(e.ctx, len(cut), e.plan.Workers,
+	cut := cutsOf(s.clip.Samples, s.frame)
+	return inOrder(e.ctx, cut.count(), e.plan.Workers,
 		func(i int) (T, error) {
 			e.tokens <- struct{}{}
 			defer func() { <-e.tokens }()
-			return work(cut[i])
+			return work(cut.at(i))
 		},
 		func(i int, t T) error {
-			e.advance(cut[i].samples * int64(s.clip.Channels))
-			return take(cut[i], t)
+			e.advance(cut.at(i).samples * int64(s.clip.Channels))
+			return take(cut.at(i), t)
 		})
 }
 
 // histogram borrows an empty histogram; giveBack returns it.
 func (e *engine) histogram() *measure.Histogram {
-	h := e.hists.Get().(*measure.Histogram)
+	h, ok := e.hists.take()
+	if !ok {
+		return new(measure.Histogram)
+	}
 	h.Reset()
 	return h
 }
 
-func (e *engine) giveBack(h *measure.Histogram) { e.hists.Put(h) }
+func (e *engine) giveBack(h *measure.Histogram) { e.hists.put(h) }
 
 // frameSamples is the frame length in samples, rounded by the definition.
 func frameSamples(rate int, seconds float64) int {

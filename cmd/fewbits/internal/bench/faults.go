@@ -14,7 +14,7 @@ func (e *engine) findFaults(s *survey, all stretch) error {
 	for c := range scans {
 		scans[c] = fault.NewScan(s.clip.RateHz)
 		scans[c].Join(all.faults[c])
-		e.parts.Put(all.faults[c])
+		e.parts.put(all.faults[c])
 	}
 	if err := e.readSegments(s, scans); err != nil {
 		return err

@@ -18,7 +18,6 @@ func (e *engine) optimism(r *Results, surveys []*survey) error {
 		return err
 	}
 	plain := &engine{ctx: e.ctx, plan: e.plan, tokens: e.tokens}
-	plain.hists.New = e.hists.New
 	plain.plan.Audio, plain.plan.FramesCSV = false, false
 	sets := make([][]made, len(surveys))
 	for i := range sets {

@@ -18,7 +18,7 @@ func inOrder[T any](ctx context.Context, n, workers int, work func(i int) (T, er
 	workers = max(1, min(workers, n))
 	for range workers {
 		group.Go(func() {
-			for i, ok := o.claim(ctx, n, 4*workers); ok; i, ok = o.claim(ctx, n, 4*workers) {
+			for i, ok := o.claim(ctx, n, 2*workers); ok; i, ok = o.claim(ctx, n, 2*workers) {
 				t, err := work(i)
 				if err = o.deliver(i, t, err); err != nil {
 					cancel()

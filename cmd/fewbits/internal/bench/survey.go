@@ -85,7 +85,7 @@ func (e *engine) readLevels(s *survey) (stretch, error) {
 			all.levels[c].Merge(&t.levels[c])
 			all.active[c].Merge(t.active[c])
 			all.faults[c].Join(t.faults[c])
-			e.parts.Put(t.faults[c])
+			e.parts.put(t.faults[c])
 		}
 		return nil
 	})
@@ -111,7 +111,7 @@ func newStretch(channels, rate int, start int64, part func(rate int, start int64
 
 // part borrows an empty part.
 func (e *engine) part(rate int, start int64) *fault.Part {
-	if p, ok := e.parts.Get().(*fault.Part); ok {
+	if p, ok := e.parts.take(); ok {
 		p.Reset(rate, start)
 		return p
 	}

@@ -53,7 +53,7 @@ func snrAt(amounts []amounted, i int, gains []float64) []float64 {
 	for _, a := range amounts {
 		search := a.designs[i].search()
 		for k, g := range gains {
-			b := search.EnergiesAt(a.values, a.counts, math.Pow(10, g/20))
+			b := search.ErrorAt(a.values, a.counts, math.Pow(10, g/20))
 			sums[k].Signal += b.Signal
 			sums[k].Error += b.Error
 		}

@@ -2,7 +2,6 @@ package bench
 
 import (
 	"math"
-	"slices"
 
 	"fewbits/measure"
 )
@@ -64,17 +63,17 @@ func (p planes) extent(a, b int) (s span) {
 		}
 		return s
 	}
-	var lo, hi [4]int16 // side by side: each waits for its own last value
+	var lo, low, hi, high int16 // two each: one waits for its own last value
 	words := p.words[0][a:b]
-	for ; len(words) >= 4; words = words[4:] {
-		for k, w := range (*[4]int16)(words) {
-			lo[k], hi[k] = min(lo[k], w), max(hi[k], w)
-		}
+	for ; len(words) >= 2; words = words[2:] {
+		v, w := words[0], words[1]
+		lo, hi = min(lo, v), max(hi, v)
+		low, high = min(low, w), max(high, w)
 	}
 	for _, w := range words {
-		lo[0], hi[0] = min(lo[0], w), max(hi[0], w)
+		lo, hi = min(lo, w), max(hi, w)
 	}
-	return span{float64(slices.Min(lo[:])) / (1 << 15), float64(slices.Max(hi[:])) / (1 << 15)}
+	return span{float64(min(lo, low)) / (1 << 15), float64(max(hi, high)) / (1 << 15)}
 }
 
 // add enters a chunk, in order.
