@@ -14,7 +14,7 @@ type coder struct {
 	kernel  *measure.Kernel   // for 16-bit samples
 	toggles *measure.Toggles  // for their quiet frames
 	search  []*measure.Search // for all others
-	spare   shelf[*coded]
+	spare   shelf[coded]
 }
 
 func (e *engine) newCoder(s *survey, designs []made) *coder {
@@ -92,11 +92,9 @@ func (s *survey) block(start int64) int {
 func (c *coder) code(s *survey, p planes, at chunk, set Settings) coded {
 	d, channels := len(c.designs), s.clip.Channels
 	n := p.samples() / s.frame
-	out := c.blank(channels*n, d)
-	out.first, out.frames = s.block(at.start), n
-	for range s.block(at.start+at.samples-1) - out.first + 1 {
-		out.blocks = append(out.blocks, make([]measure.Tally, d))
-	}
+	first := s.block(at.start)
+	out := c.blank(s.block(at.start+at.samples-1)-first+1, channels*n, d)
+	out.first, out.frames = first, n
 	for ch := range channels {
 		signal, errs := out.signal[ch*n:(ch+1)*n], out.errs[ch*n*d:(ch+1)*n*d]
 		if p.words != nil {
@@ -110,14 +108,26 @@ func (c *coder) code(s *survey, p planes, at chunk, set Settings) coded {
 	return out
 }
 
-// blank takes what a chunk of so many frames fills from those done with.
-func (c *coder) blank(frames, designs int) coded {
+// blank takes what a chunk of so many blocks and frames fills from those done
+// with.
+func (c *coder) blank(blocks, frames, designs int) coded {
 	out, ok := c.spare.take()
 	if !ok || cap(out.signal) < frames {
-		return coded{signal: make([]float64, frames), errs: make([]float64, frames*designs), spread: newSpread(designs)}
+		out = coded{signal: make([]float64, frames), errs: make([]float64, frames*designs), spread: newSpread(designs)}
 	}
 	clear(out.spread.counts)
-	return coded{signal: out.signal[:frames], errs: out.errs[:frames*designs], spread: out.spread}
+	out.signal, out.errs = out.signal[:frames], out.errs[:frames*designs]
+	kept := out.blocks[:cap(out.blocks)]
+	out.blocks = out.blocks[:0]
+	for i := range blocks {
+		if i < len(kept) && kept[i] != nil {
+			clear(kept[i])
+			out.blocks = append(out.blocks, kept[i])
+			continue
+		}
+		out.blocks = append(out.blocks, make([]measure.Tally, designs))
+	}
+	return out
 }
 
 // count enters the frames of a channel into the segmental measures.

@@ -48,7 +48,7 @@ func (e *engine) measure(s *survey, designs []made) (*outcome, error) {
 		out.add(r.coded)
 		out.spread.merge(r.spread)
 		tr.add(s, c0, r)
-		c.spare.put(&r.coded)
+		c.spare.put(r.coded)
 		return rows.write(r.rows)
 	})
 	if err != nil {
