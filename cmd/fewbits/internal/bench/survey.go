@@ -167,7 +167,6 @@ type ranged struct {
 	frames, in int64
 	quietSq    float64
 	quietLen   int64
-	fits       []fitted // to the samples in range
 	kept       []keptFrame
 }
 
