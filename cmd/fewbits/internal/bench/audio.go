@@ -13,11 +13,12 @@ import (
 type audio struct {
 	designs []made
 	outs    []*samples.Writer // reconstruction and error of each design in turn
-	words   []*wordTable      // tables of both for 16-bit in and out; nil otherwise
+	tables  []*pairTable      // of each design, for 16-bit in and out; nil otherwise
 }
 
-// wordTable maps word w at position w + 32768.
-type wordTable [1 << 16]int16
+// pairTable maps word w at position w + 32768 to reconstruction and error: one
+// look finds both.
+type pairTable [1 << 16][2]int16
 
 // openAudio creates two files a design.
 func (e *engine) openAudio(s *survey, designs []made) (*audio, error) {
@@ -37,23 +38,21 @@ func (e *engine) openAudio(s *survey, designs []made) (*audio, error) {
 			a.outs = append(a.outs, w)
 		}
 		if e.plan.Depth == "16" && s.rec.Words() {
-			y, err := wordTables(d.grid)
-			a.words = append(a.words, y, err)
+			a.tables = append(a.tables, newPairTable(d.grid))
 		}
 	}
 	return a, nil
 }
 
-// wordTables gives, for each 16-bit word, the reconstruction and the error on
+// newPairTable gives, for each 16-bit word, the reconstruction and the error on
 // the same grid, rounded away from zero.
-func wordTables(g codec.Grid) (y, e *wordTable) {
-	y, e = new(wordTable), new(wordTable)
+func newPairTable(g codec.Grid) *pairTable {
+	t := new(pairTable)
 	for i, k := range g.Index {
 		v := g.Values[k]
-		y[i] = word(v)
-		e[i] = word(float64(i-32768)/32768 - v)
+		t[i] = [2]int16{word(v), word(float64(i-32768)/32768 - v)}
 	}
-	return y, e
+	return t
 }
 
 // word rounds to the 16-bit grid, halves away from zero, within its range.
@@ -63,35 +62,45 @@ func word(v float64) int16 {
 
 // write codes one chunk into every file.
 func (a *audio) write(p planes, start int64) error {
-	var out planes
-	if a.words != nil {
-		for range p.words {
-			out.words = append(out.words, plane(&spareWords, int64(p.samples())))
-		}
-		defer out.done()
+	if a.tables != nil {
+		return a.writeWords(p.words, start)
 	}
 	for i, w := range a.outs {
-		var err error
-		if a.words != nil {
-			a.words[i].look(out.words, p.words)
-			err = w.WriteWordsAt(out.words, start)
-		} else {
-			_, err = w.WriteAt(a.reals(p, i), start)
-		}
-		if err != nil {
+		if _, err := w.WriteAt(a.reals(p, i), start); err != nil {
 			return fmt.Errorf("writing audio: %w", err)
 		}
 	}
 	return nil
 }
 
-// look looks every word up.
-func (t *wordTable) look(out, in [][]int16) {
-	for c, words := range in {
-		to := out[c][:len(words)]
-		for i, w := range words {
-			to[i] = t[uint16(w)^0x8000]
+// writeWords is write for 16 bits in and out.
+func (a *audio) writeWords(in [][]int16, start int64) error {
+	var out [2]planes
+	for i := range out {
+		for _, words := range in {
+			out[i].words = append(out[i].words, plane(&spareWords, int64(len(words))))
 		}
+		defer out[i].done()
+	}
+	for d, table := range a.tables {
+		for c, words := range in {
+			table.look(out[0].words[c], out[1].words[c], words)
+		}
+		for i := range out {
+			if err := a.outs[2*d+i].WriteWordsAt(out[i].words, start); err != nil {
+				return fmt.Errorf("writing audio: %w", err)
+			}
+		}
+	}
+	return nil
+}
+
+// look looks every word up.
+func (t *pairTable) look(y, e, words []int16) {
+	y, e = y[:len(words)], e[:len(words)]
+	for i, w := range words {
+		pair := &t[uint16(w)^0x8000]
+		y[i], e[i] = pair[0], pair[1]
 	}
 }
 
