@@ -123,6 +123,9 @@ func printStaircase(w io.Writer, s bench.Staircase) {
 	}
 	fmt.Fprintf(w, "  overload beyond %.6g and %.6g: %.3g of the samples, %.3g %% of the error\n",
 		float64(s.Lo), float64(s.Hi), float64(s.OverloadP), 100*float64(s.OverloadMSE/s.MSE))
+	if s.FrameSNRDB.Defined() {
+		fmt.Fprintf(w, "  mean SNR of the frames it was made on, each limited: %s dB\n", num(s.FrameSNRDB, 3))
+	}
 	fmt.Fprint(w, "  SNR with the level off by")
 	for _, o := range s.Off {
 		fmt.Fprintf(w, " %+g dB: %s", o.DB, num(o.SNRDB, 2))

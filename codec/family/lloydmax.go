@@ -128,9 +128,7 @@ func solve(s Spec, m Material, d design.Density, sym design.Symmetry) (design.So
 		if err != nil {
 			return design.Solution{}, err
 		}
-		sol, err := design.SegSNR(*frames, s.Levels, sym, aim == "segsnr-open", design.SegOptions{Trace: m.Trace})
-		sol.Notes = append(sol.Notes, fmt.Sprintf("mean frame SNR of the %d frames it was made on: %.3f dB", frames.Len(), sol.Aim))
-		return sol, err
+		return design.SegSNR(*frames, s.Levels, sym, aim == "segsnr-open", design.SegOptions{Trace: m.Trace})
 	case d == nil:
 		return exact(m, s.Levels, sym)
 	}

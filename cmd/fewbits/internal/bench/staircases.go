@@ -31,6 +31,9 @@ type Staircase struct {
 	HighRateGapDB Num `json:"above_panter_dite_db"`
 	// OverloadMSE is the part of the MSE beyond the overload points.
 	OverloadMSE Num `json:"overload_mse"`
+	// FrameSNRDB is what a segmental aim reached: the mean limited SNR of the
+	// frames it was made on, dB; undefined for other aims.
+	FrameSNRDB Num `json:"mean_frame_snr_db"`
 	// Trace is the designer's convergence, a number a round, of what TraceOf
 	// says; only where asked for.
 	Trace   []float64 `json:"trace,omitempty"`
@@ -63,7 +66,10 @@ func MakeStaircases(ctx context.Context, plan Plan, judge string, rms float64) (
 			return nil, refused, fmt.Errorf("design %q: %w", spec.Text, err)
 		}
 		s := Staircase{Design: finish(spec, got, who).Design, Model: got.From, Stair: got.Stair, Words: words}
-		s.Design.Name = spec.Name()
+		s.Design.Name, s.FrameSNRDB = spec.Name(), Num(math.NaN())
+		if spec.Need() == family.FramedData {
+			s.FrameSNRDB = Num(got.Solution.Aim)
+		}
 		if sol := got.Solution; sol != nil && plan.Trace {
 			s.Trace, s.TraceOf = sol.Trace, sol.TraceOf
 		}
