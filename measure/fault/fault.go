@@ -136,11 +136,31 @@ func (p *Part) AddWords(words []int16) {
 
 // Join appends the part that follows.
 func (p *Part) Join(next *Part) {
-	p.grid.join(&next.grid)
-	p.runs.join(&next.runs)
-	if next.grid.off > 0 {
-		p.tops.join(&next.tops)
+	p.Absorb(next)
+	p.Follow(next.Order())
+}
+
+// Absorb adds what another part counted, whichever stretch it was: all but
+// what Order keeps.
+func (p *Part) Absorb(other *Part) {
+	p.grid.join(&other.grid)
+	if other.grid.off > 0 {
+		p.tops.join(&other.tops)
 	}
+}
+
+// Order is the little of a part that depends on the stretches' order.
+type Order struct {
+	runs  runs
+	means means
+}
+
+// Order copies it.
+func (p *Part) Order() *Order { return &Order{p.runs, p.means} }
+
+// Follow appends it for the stretch that follows.
+func (p *Part) Follow(next *Order) {
+	p.runs.join(&next.runs)
 	p.means.join(&next.means)
 }
 

@@ -85,3 +85,14 @@ func (p planes) samples() int {
 	}
 	return len(p.reals[0])
 }
+
+// from is what follows the first n samples.
+func (p planes) from(n int) (rest planes) {
+	for _, w := range p.words {
+		rest.words = append(rest.words, w[n:])
+	}
+	for _, x := range p.reals {
+		rest.reals = append(rest.reals, x[n:])
+	}
+	return rest
+}

@@ -7,9 +7,40 @@ import (
 	"fewbits/measure/fault"
 )
 
+// searchFaults scans a chunk, channel by channel, so that a worker needs one
+// part at a time: counts go to all at once, the rest is handed on.
+func (e *engine) searchFaults(p planes, rate int, start int64, all *gathered) (out []*fault.Order) {
+	part := e.part(rate, start)
+	defer e.parts.put(part)
+	for c := range all.faults {
+		if c > 0 {
+			part.Reset(rate, start)
+		}
+		if p.words != nil {
+			part.AddWords(p.words[c])
+		} else {
+			part.Add(p.reals[c])
+		}
+		out = append(out, part.Order())
+		all.mu.Lock()
+		all.faults[c].Absorb(part)
+		all.mu.Unlock()
+	}
+	return out
+}
+
+// part borrows an empty part.
+func (e *engine) part(rate int, start int64) *fault.Part {
+	if p, ok := e.parts.take(); ok {
+		p.Reset(rate, start)
+		return p
+	}
+	return fault.NewPart(rate, start)
+}
+
 // findFaults judges what the first pass gathered, and spectra of segments
 // spread over the recording, and enters what is wrong with it.
-func (e *engine) findFaults(s *survey, all stretch) error {
+func (e *engine) findFaults(s *survey, all *gathered) error {
 	scans := make([]*fault.Scan, s.clip.Channels)
 	for c := range scans {
 		scans[c] = fault.NewScan(s.clip.RateHz)

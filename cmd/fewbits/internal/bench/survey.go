@@ -2,6 +2,7 @@ package bench
 
 import (
 	"math"
+	"sync"
 
 	"fewbits/measure"
 	"fewbits/measure/fault"
@@ -28,10 +29,19 @@ type survey struct {
 	quietLen int64
 }
 
-// stretch is what a chunk adds to a survey, a slot a channel.
+// stretch is what a chunk adds to a survey in order, a slot a channel; counts
+// do not wait for their turn.
 type stretch struct {
 	levels []measure.Levels
 	active []*measure.Activity
+	faults []*fault.Order
+}
+
+// gathered is what a whole recording comes to, a slot a channel.
+type gathered struct {
+	levels []measure.Levels
+	active []*measure.Activity
+	mu     sync.Mutex // for the counts in faults
 	faults []*fault.Part
 }
 
@@ -57,10 +67,14 @@ func (e *engine) survey(rec *samples.Recording, file string) (*survey, error) {
 }
 
 // readLevels is the first pass over one recording.
-func (e *engine) readLevels(s *survey) (stretch, error) {
+func (e *engine) readLevels(s *survey) (*gathered, error) {
 	hists := gather{e: e}
 	rate := s.clip.RateHz
-	all := newStretch(s.clip.Channels, rate, 0, e.part)
+	all := &gathered{levels: make([]measure.Levels, s.clip.Channels)}
+	for range s.clip.Channels {
+		all.active = append(all.active, measure.NewActivity(float64(rate)))
+		all.faults = append(all.faults, e.part(rate, 0))
+	}
 	work := func(c chunk) (stretch, error) {
 		warm := min(c.start, int64(measure.WarmUpSeconds*float64(rate)))
 		p, err := read(s.rec, c.start-warm, c.samples+warm)
@@ -68,8 +82,8 @@ func (e *engine) readLevels(s *survey) (stretch, error) {
 			return stretch{}, err
 		}
 		defer p.done()
-		t := newStretch(s.clip.Channels, rate, c.start, e.part)
-		p.survey(int(warm), t)
+		t := p.survey(int(warm), rate)
+		t.faults = e.searchFaults(p.from(int(warm)), rate, c.start, all)
 		if p.reals != nil {
 			hists.count(func(h *measure.Histogram) {
 				for _, x := range p.reals {
@@ -83,8 +97,7 @@ func (e *engine) readLevels(s *survey) (stretch, error) {
 		for c := range t.levels {
 			all.levels[c].Merge(&t.levels[c])
 			all.active[c].Merge(t.active[c])
-			all.faults[c].Join(t.faults[c])
-			e.parts.put(t.faults[c])
+			all.faults[c].Follow(t.faults[c])
 		}
 		return nil
 	})
@@ -98,47 +111,28 @@ func (e *engine) readLevels(s *survey) (stretch, error) {
 	return all, err
 }
 
-// newStretch is empty; part makes a fault part for a rate and a first sample.
-func newStretch(channels, rate int, start int64, part func(rate int, start int64) *fault.Part) stretch {
-	t := stretch{levels: make([]measure.Levels, channels)}
-	for range channels {
-		t.active = append(t.active, measure.NewActivity(float64(rate)))
-		t.faults = append(t.faults, part(rate, start))
+// survey sums a chunk whose first warm samples belong to the chunk before. The
+// levels of words come from the counts of the fault parts, in the end.
+func (p planes) survey(warm, rate int) (t stretch) {
+	t.levels = make([]measure.Levels, max(len(p.words), len(p.reals)))
+	for c := range t.levels {
+		a := measure.NewActivity(float64(rate))
+		t.active = append(t.active, a)
+		if p.words != nil {
+			a.WarmWords(p.words[c][:warm])
+			a.AddWords(p.words[c][warm:])
+			continue
+		}
+		a.Warm(p.reals[c][:warm])
+		a.Add(p.reals[c][warm:])
+		t.levels[c].Add(p.reals[c][warm:])
 	}
 	return t
 }
 
-// part borrows an empty part.
-func (e *engine) part(rate int, start int64) *fault.Part {
-	if p, ok := e.parts.take(); ok {
-		p.Reset(rate, start)
-		return p
-	}
-	return fault.NewPart(rate, start)
-}
-
-// survey sums a chunk whose first warm samples belong to the chunk before. The
-// levels of words come from the counts of the fault parts, in the end.
-func (p planes) survey(warm int, t stretch) {
-	for c := range t.levels {
-		if p.words != nil {
-			w := p.words[c]
-			t.active[c].WarmWords(w[:warm])
-			t.active[c].AddWords(w[warm:])
-			t.faults[c].AddWords(w[warm:])
-			continue
-		}
-		x := p.reals[c]
-		t.active[c].Warm(x[:warm])
-		t.active[c].Add(x[warm:])
-		t.levels[c].Add(x[warm:])
-		t.faults[c].Add(x[warm:])
-	}
-}
-
 // settleLevels turns the sums into the clip's figures and the channels' rules
 // for what is in range. A clip's figures pool its channels.
-func (e *engine) settleLevels(s *survey, all stretch) {
+func (e *engine) settleLevels(s *survey, all *gathered) {
 	var activeEnergy float64
 	for c := range all.levels {
 		s.levels.Merge(&all.levels[c])
