@@ -128,7 +128,7 @@ func (a *segAim) again(run segRun) segRun {
 	return run
 }
 
-// sharpen goes on from a run with smaller constants, then by trial moves.
+// sharpen goes on from a run with smaller constants.
 func (a *segAim) sharpen(run segRun, rounds int) segRun {
 	for _, soft := range [3]float64{1, 1. / 3, 1. / 10} {
 		next := a.climb(run.table, soft, rounds)

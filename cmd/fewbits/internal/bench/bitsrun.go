@@ -81,7 +81,10 @@ func (run *BitsRun) compare(r *Results) {
 		for _, n := range run.Families {
 			if slices.Index(plainFamilies, n.Family) < k {
 				s := savedBits(r, n, run.Families[i], run.Figure, run.Target)
-				run.Against, run.Method = append(run.Against, s), s.method
+				run.Against = append(run.Against, s)
+				if s.method != "" {
+					run.Method = s.method
+				}
 			}
 		}
 	}
@@ -158,6 +161,11 @@ func savedBits(r *Results, n, base BitsNeed, figure string, target float64) Save
 	own := measure.Units{Values: u.Values[len(theirs):], Weights: u.Weights, Groups: u.Groups}
 	at := crossing(n.Rates, measure.Compare(own, r.Settings.Seed).Means, target)
 	out := SavedBits{Family: n.Family, Against: base.Family}
+	if math.IsNaN(at) || len(base.Rates) < 2 {
+		nan := Num(math.NaN())
+		out.Bits, out.Interval = nan, [2]Num{nan, nan}
+		return out
+	}
 	u.Values = append(u.Values[:len(theirs)], interpolate(n.Rates, own.Values, at))
 	reach := measure.MatchBits(floats(base.Rates), u, r.Settings.Seed)
 	out.Bits, out.Interval = Num(reach.Bits-at), [2]Num{Num(reach.Lo - at), Num(reach.Hi - at)}

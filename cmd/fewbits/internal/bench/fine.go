@@ -2,6 +2,7 @@ package bench
 
 import (
 	"math"
+	"slices"
 	"sync"
 
 	"fewbits/codec/family"
@@ -11,7 +12,8 @@ import (
 // refine reads recordings finer than 16 bits once more, into bins as fine as
 // their peak allows, where a design is made from their amplitudes.
 func (e *engine) refine(p *pool) error {
-	if p.exact || !e.needs(family.Data) || p.energy == 0 {
+	wanted := slices.ContainsFunc(e.plan.Specs, func(s family.Spec) bool { return s.Need() == family.Data })
+	if p.exact || !wanted || p.energy == 0 {
 		return nil
 	}
 	peak, total := 0.0, int64(0)

@@ -64,6 +64,7 @@ func (e *engine) openOne(file string) (s *survey, err error) {
 		}
 	}()
 	sum := later(rec.SHA256)
+	defer sum() // before the file is closed
 	next, did, err := prepare.Apply(rec, e.plan.Steps)
 	if err != nil {
 		return nil, err
