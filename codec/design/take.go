@@ -53,7 +53,7 @@ func (t Take) atGains() ([]Take, error) {
 		}
 		g := math.Pow(10, db/20)
 		unit := t.louderUnit()
-		scaled := Take{Unit: unit, LSB: math.Min(1, t.LSB*g)}
+		scaled := Take{Unit: unit, LSB: math.Min(1, math.Max(unit, t.LSB*g))} // the words' own rounding earns nothing
 		for _, words := range t.Frames {
 			louder := make([]int16, len(words))
 			for i, w := range words {
